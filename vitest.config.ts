@@ -1,5 +1,5 @@
 import { mergeConfig, defineConfig } from 'vitest/config';
-import viteConfig from './vite.config';
+import viteConfig from './vite.config.ts';
 
 /** The suites share one runner: reference and unit need nothing, api needs the throw-away cluster, browser also a built client. */
 export default defineConfig((env) =>
@@ -10,11 +10,24 @@ export default defineConfig((env) =>
         { extends: true, test: { name: 'unit', include: ['tests/unit/**/*.test.ts'] } },
         {
           extends: true,
-          test: { name: 'api', include: ['tests/api/**/*.test.ts', 'tests/faults/**/*.test.ts'], testTimeout: 30_000, hookTimeout: 60_000 },
+          test: {
+            name: 'api',
+            include: ['tests/api/**/*.test.ts', 'tests/faults/**/*.test.ts'],
+            globalSetup: ['tests/support/cluster.setup.ts'],
+            testTimeout: 30_000,
+            hookTimeout: 60_000,
+          },
         },
         {
           extends: true,
-          test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], testTimeout: 120_000, hookTimeout: 120_000, fileParallelism: false },
+          test: {
+            name: 'browser',
+            include: ['tests/browser/**/*.test.ts'],
+            globalSetup: ['tests/support/cluster.setup.ts'],
+            testTimeout: 120_000,
+            hookTimeout: 120_000,
+            fileParallelism: false,
+          },
         },
       ],
     },

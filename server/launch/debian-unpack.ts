@@ -1,0 +1,74 @@
+import { existsSync, mkdirSync, readdirSync, rmSync } from 'node:fs';
+import { join } from 'node:path';
+import { checkoutFolder, localFolder, makeLocalFolder } from './checkout';
+import { run, type CommandResult } from './command';
+
+const unpackFolder = join(localFolder, 'debian');
+
+/** The folder of packages unpacked by an ordinary user, and the environment their programs need. */
+export function unpackedRoot(): { folder: string; env: NodeJS.ProcessEnv } | undefined {
+  if (!existsSync(join(unpackFolder, 'usr'))) return undefined;
+  const libraries = libraryFolders(unpackFolder);
+  const inherited = process.env.LD_LIBRARY_PATH;
+  return {
+    folder: unpackFolder,
+    env: {
+      LD_LIBRARY_PATH: [...libraries, ...(inherited ? [inherited] : [])].join(':'),
+      FONTCONFIG_PATH: existsSync('/etc/fonts') ? '/etc/fonts' : join(unpackFolder, 'etc/fonts'),
+    },
+  };
+}
+
+/** Fetches a package with those of its dependencies the machine lacks, and unpacks them; needs no rights. */
+export async function unpackDebianPackage(packageName: string): Promise<CommandResult> {
+  makeLocalFolder();
+  const state = join(localFolder, 'apt');
+  const archives = join(state, 'cache', 'archives');
+  mkdirSync(join(state, 'state', 'lists', 'partial'), { recursive: true });
+  mkdirSync(join(archives, 'partial'), { recursive: true });
+  const own = [
+    ...option('Dir::State', join(state, 'state')),
+    ...option('Dir::State::status', '/var/lib/dpkg/status'),
+    ...option('Dir::Cache', join(state, 'cache')),
+    ...option('Dir::Cache::archives', archives),
+    ...option('Debug::NoLocking', '1'),
+    ...option('APT::Sandbox::User', ''),
+    ...option('Acquire::Retries', '2'),
+    // Hooks in apt.conf.d are written for root.
+    ...option('APT::Update::Post-Invoke', ''),
+    ...option('APT::Update::Post-Invoke-Success', ''),
+  ];
+  const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' };
+  const refreshed = await run('apt-get', [...own, '-q', 'update'], { env, timeoutMs: 5 * 60_000 });
+  const fetched = await run(
+    'apt-get',
+    [...own, '-q', '-y', '--no-install-recommends', '--download-only', 'install', packageName],
+    { env, timeoutMs: 15 * 60_000 },
+  );
+  if (fetched.code !== 0) {
+    return { ...fetched, stderr: `${refreshed.stderr}\n${fetched.stderr}` };
+  }
+  mkdirSync(unpackFolder, { recursive: true });
+  for (const archive of readdirSync(archives).filter((name) => name.endsWith('.deb'))) {
+    const unpacked = await run('dpkg', ['-x', join(archives, archive), unpackFolder], {
+      cwd: checkoutFolder,
+    });
+    if (unpacked.code !== 0) return unpacked;
+    rmSync(join(archives, archive));
+  }
+  return fetched;
+}
+
+function option(name: string, value: string): string[] {
+  return ['-o', `${name}=${value}`];
+}
+
+/** Debian keeps libraries in usr/lib, lib and their folders named for the machine's architecture. */
+function libraryFolders(root: string): string[] {
+  return ['usr/lib', 'lib'].flatMap((place) => {
+    const folder = join(root, place);
+    if (!existsSync(folder)) return [];
+    const architectures = readdirSync(folder).filter((name) => name.includes('-linux-'));
+    return [folder, ...architectures.map((name) => join(folder, name))];
+  });
+}
