@@ -23,7 +23,7 @@ export default defineConfig((env) =>
           test: {
             name: 'browser',
             include: ['tests/browser/**/*.test.ts'],
-            globalSetup: ['tests/support/cluster.setup.ts'],
+            globalSetup: ['tests/support/cluster.setup.ts', 'tests/support/browser.setup.ts'],
             testTimeout: 120_000,
             hookTimeout: 120_000,
             fileParallelism: false,

@@ -1,7 +1,6 @@
-import { mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdirSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { setTimeout as wait } from 'node:timers/promises';
-import { LaunchError } from '../launch/command';
+import { bornAt, readIfThere, withLock } from '../launch/lock';
 
 /**
  * Several processes may use one cluster at once (two starts, several test runs). Each leaves a
@@ -9,11 +8,9 @@ import { LaunchError } from '../launch/command';
  */
 export class ClusterLeases {
   private readonly folder: string;
-  private readonly lockFile: string;
 
-  constructor(home: string) {
+  constructor(private readonly home: string) {
     this.folder = join(home, 'leases');
-    this.lockFile = join(home, 'lock');
     mkdirSync(this.folder, { recursive: true });
   }
 
@@ -40,50 +37,7 @@ export class ClusterLeases {
   }
 
   /** Starting and stopping happen one process at a time. */
-  async alone<T>(act: () => Promise<T>): Promise<T> {
-    await this.lock();
-    try {
-      return await act();
-    } finally {
-      rmSync(this.lockFile, { force: true });
-    }
-  }
-
-  private async lock(): Promise<void> {
-    for (let attempt = 0; attempt < 1200; attempt += 1) {
-      try {
-        writeFileSync(this.lockFile, String(process.pid), { flag: 'wx' });
-        return;
-      } catch (error) {
-        if ((error as NodeJS.ErrnoException).code !== 'EEXIST') throw error;
-      }
-      if (this.heldByTheDead()) rmSync(this.lockFile, { force: true });
-      else await wait(100);
-    }
-    throw new LaunchError(
-      'cluster_locked',
-      `Another process holds ${this.lockFile} for two minutes: end it, or remove the file if it is gone.`,
-    );
-  }
-
-  private heldByTheDead(): boolean {
-    const pid = Number(readIfThere(this.lockFile));
-    return pid > 0 && bornAt(pid) === undefined;
-  }
-}
-
-/** When the process was born, in the kernel's ticks; undefined when it is gone or only a zombie. */
-export function bornAt(pid: number): string | undefined {
-  const stat = readIfThere(`/proc/${pid}/stat`);
-  // The second field is the program's name in brackets and may hold anything.
-  const fields = stat?.slice(stat.lastIndexOf(')') + 2).split(' ');
-  return fields && fields[0] !== 'Z' ? fields[19] : undefined;
-}
-
-function readIfThere(file: string): string | undefined {
-  try {
-    return readFileSync(file, 'utf8');
-  } catch {
-    return undefined;
+  alone<T>(act: () => Promise<T>): Promise<T> {
+    return withLock(join(this.home, 'lock'), act);
   }
 }

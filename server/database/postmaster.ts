@@ -73,6 +73,12 @@ export async function stopPostmaster(postmaster: Postmaster): Promise<void> {
   if ((await stop('fast')).code !== 0) await stop('immediate');
 }
 
+/** For folders that are thrown away: ends the server at once. */
+export function killPostmaster(dataFolder: string): void {
+  const pidFile = readPidFile(dataFolder);
+  if (pidFile && worksIn(pidFile.pid, dataFolder)) process.kill(pidFile.pid, 'SIGQUIT');
+}
+
 export function commandOptions({ programs, account }: Postmaster): CommandOptions {
   return { ...account, cwd: '/', env: { ...process.env, ...programs.env, LC_ALL: 'C.UTF-8' } };
 }

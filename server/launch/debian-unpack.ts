@@ -63,12 +63,23 @@ function option(name: string, value: string): string[] {
   return ['-o', `${name}=${value}`];
 }
 
-/** Debian keeps libraries in usr/lib, lib and their folders named for the machine's architecture. */
+/** Debian keeps libraries in usr/lib, lib, their folders named for the architecture, and one below. */
 function libraryFolders(root: string): string[] {
   return ['usr/lib', 'lib'].flatMap((place) => {
     const folder = join(root, place);
-    if (!existsSync(folder)) return [];
-    const architectures = readdirSync(folder).filter((name) => name.includes('-linux-'));
-    return [folder, ...architectures.map((name) => join(folder, name))];
+    const ofArchitecture = foldersIn(folder).filter((path) => path.includes('-linux-'));
+    const below = ofArchitecture.flatMap(foldersIn).filter(holdsLibraries);
+    return [folder, ...ofArchitecture, ...below].filter((path) => existsSync(path));
   });
+}
+
+function foldersIn(folder: string): string[] {
+  if (!existsSync(folder)) return [];
+  return readdirSync(folder, { withFileTypes: true })
+    .filter((entry) => entry.isDirectory())
+    .map((entry) => join(folder, entry.name));
+}
+
+function holdsLibraries(folder: string): boolean {
+  return readdirSync(folder).some((name) => /^lib.*\.so/.test(name));
 }

@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import { pathToFileURL } from 'node:url';
 import { ensureDatabase, onDatabase, withClient } from '../../server/database/roles';
 import { checkoutFolder } from '../../server/launch/checkout';
-import { clusterVariables } from './cluster';
+import { type clusterVariables } from './cluster';
 
 /*
  * A database of its own for each test file, copied from a migrated template in a fraction of a
