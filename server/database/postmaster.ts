@@ -80,7 +80,12 @@ export function killPostmaster(dataFolder: string): void {
 }
 
 export function commandOptions({ programs, account }: Postmaster): CommandOptions {
-  return { ...account, cwd: '/', env: { ...process.env, ...programs.env, LC_ALL: 'C.UTF-8' } };
+  return {
+    ...account,
+    shielded: true,
+    cwd: '/',
+    env: { ...process.env, ...programs.env, LC_ALL: 'C.UTF-8' },
+  };
 }
 
 /** A free port on loopback; the one wished for, if it is still free. */

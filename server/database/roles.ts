@@ -43,18 +43,23 @@ export async function ensureDatabase(
     const database = client.escapeIdentifier(name);
     const source = template ? ` TEMPLATE ${client.escapeIdentifier(template)}` : '';
     await client.query(`CREATE DATABASE ${database} OWNER ${ownerRole}${source}`);
-    await client.query(`REVOKE ALL ON DATABASE ${database} FROM PUBLIC`);
-    await client.query(`GRANT CONNECT, TEMPORARY ON DATABASE ${database} TO ${appRole}`);
     return true;
   });
-  if (made && !template) {
-    await withClient(onDatabase(adminUrl, name), async (client) => {
-      await client.query(`ALTER SCHEMA public OWNER TO ${ownerRole}`);
-      await client.query('REVOKE ALL ON SCHEMA public FROM PUBLIC');
-      await client.query(`GRANT USAGE ON SCHEMA public TO ${appRole}`);
-    });
-  }
+  if (made) await closeToOthers(onDatabase(adminUrl, name));
   return made;
+}
+
+/** Hands the database of this address to the owner role and closes it to everybody but the two roles. */
+export async function closeToOthers(adminUrl: string): Promise<void> {
+  await withClient(adminUrl, async (client) => {
+    const database = client.escapeIdentifier(new URL(adminUrl).pathname.slice(1));
+    await client.query(`ALTER DATABASE ${database} OWNER TO ${ownerRole}`);
+    await client.query(`REVOKE ALL ON DATABASE ${database} FROM PUBLIC`);
+    await client.query(`GRANT CONNECT, TEMPORARY ON DATABASE ${database} TO ${appRole}`);
+    await client.query(`ALTER SCHEMA public OWNER TO ${ownerRole}`);
+    await client.query('REVOKE ALL ON SCHEMA public FROM PUBLIC');
+    await client.query(`GRANT USAGE ON SCHEMA public TO ${appRole}`);
+  });
 }
 
 /** The same server and role, another database. */

@@ -18,6 +18,8 @@ export interface CommandOptions {
   gid?: number;
   timeoutMs?: number;
   input?: string;
+  /** In a group of its own, where Ctrl-C in the terminal does not reach it halfway. */
+  shielded?: boolean;
 }
 
 export interface CommandResult {
@@ -42,6 +44,7 @@ export function run(
       env: options.env ?? process.env,
       uid: options.uid,
       gid: options.gid,
+      detached: options.shielded ?? false,
       stdio: ['pipe', 'pipe', 'pipe'],
     });
     const timer = setTimeout(() => {

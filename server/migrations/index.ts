@@ -1,0 +1,17 @@
+import { people } from './001-people';
+import { criteria } from './002-criteria';
+import { lotsAndReadings } from './003-lots-and-readings';
+import { decisions } from './004-decisions';
+import { holdsAndMail } from './005-holds-and-mail';
+import { history } from './006-history';
+import { type Migration } from './migration';
+
+/** In order. A step that has run anywhere is never edited; a change is a new step. */
+export const migrations: Migration[] = [
+  people,
+  criteria,
+  lotsAndReadings,
+  decisions,
+  holdsAndMail,
+  history,
+];
