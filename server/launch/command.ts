@@ -81,7 +81,13 @@ export async function runOrStop(
 ): Promise<string> {
   const result = await run(program, args, options);
   if (result.code === 0) return result.stdout;
-  const words = (result.stderr || result.stdout).trim().split('\n').slice(-6).join('\n  ');
+  const words = lastWords(result.stderr.trim() || result.stdout);
   const why = result.code === 124 ? 'it ran out of time' : `exit code ${result.code}`;
   throw new LaunchError(code, `${sentence} (${program}: ${why})\n  ${words}`);
+}
+
+/** What a failed program said at the end, without stack traces. */
+export function lastWords(text: string): string {
+  const lines = text.split('\n').filter((line) => line.trim() && !/^\s+at .*\d\)?$/.test(line));
+  return lines.slice(-12).join('\n  ');
 }

@@ -1,5 +1,5 @@
 import { existsSync } from 'node:fs';
-import { LaunchError, run, type CommandOptions, type CommandResult } from './command';
+import { LaunchError, lastWords, run, type CommandOptions, type CommandResult } from './command';
 import { unpackDebianPackage, unpackedRoot } from './debian-unpack';
 import { say } from './say';
 
@@ -112,6 +112,8 @@ async function twice(what: string, attempt: () => Promise<CommandResult>): Promi
   say(`Could not ${what} at the first try; trying once more ...`);
   const second = await attempt();
   if (second.code === 0) return;
-  const words = second.stderr.trim().split('\n').slice(-6).join('\n  ');
-  throw new LaunchError('debian_failed', `Could not ${what} from Debian's packages:\n  ${words}`);
+  throw new LaunchError(
+    'debian_failed',
+    `Could not ${what} from Debian's packages:\n  ${lastWords(second.stderr)}`,
+  );
 }

@@ -17,13 +17,6 @@ export async function startMailFake(ports: { smtpPort: number; pagePort: number 
   return part.startMailFake(ports);
 }
 
-export async function migrate(ownerUrl: string): Promise<unknown> {
-  const part = await load<{ migrate: (url: string) => Promise<unknown> }>(
-    'server/database/migrate.ts',
-  );
-  return part.migrate(ownerUrl);
-}
-
 async function load<T>(place: string): Promise<T> {
   const file = join(checkoutFolder, place);
   if (!existsSync(file)) throw new LaunchError('part_missing', `${place} is not there yet.`);

@@ -1,8 +1,9 @@
 import { join } from 'node:path';
+import { migrate } from '../database/migrate';
 import { checkoutFolder } from './checkout';
 import { runOrStop } from './command';
 import { openDatabase, isEmpty } from './database';
-import { migrate, startMailFake } from './parts';
+import { startMailFake } from './parts';
 import { choosePort } from './ports';
 import { type Running } from './running';
 import { say } from './say';
@@ -24,7 +25,7 @@ export async function prepareSurroundings(
 ): Promise<Surroundings> {
   const secrets = localSecrets();
   const database = await openDatabase(settings, secrets, running);
-  await migrate(database.ownerUrl);
+  await migrate(database.ownerUrl, new URL(database.appUrl).username);
 
   const mail = settings.smtpUrl
     ? undefined

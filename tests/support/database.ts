@@ -1,7 +1,7 @@
 import { createHash, randomBytes } from 'node:crypto';
-import { existsSync, readdirSync, readFileSync } from 'node:fs';
+import { readdirSync, readFileSync, statSync } from 'node:fs';
 import { join } from 'node:path';
-import { pathToFileURL } from 'node:url';
+import { migrate } from '../../server/database/migrate';
 import { ensureDatabase, onDatabase, withClient } from '../../server/database/roles';
 import { checkoutFolder } from '../../server/launch/checkout';
 import { type clusterVariables } from './cluster';
@@ -74,7 +74,7 @@ function migratedTemplate(): Promise<string> {
 
 async function buildTemplate(): Promise<string> {
   const adminUrl = serverUrl('TEST_ADMIN_URL');
-  const name = `template_${migrationsMark()}`;
+  const name = `template_${schemaMark()}`;
   await withClient(adminUrl, async (client) => {
     // Several test files want it at the same moment; one builds, the others wait.
     await client.query(`SELECT pg_advisory_lock(hashtext('quartzhold test template'))`);
@@ -83,7 +83,7 @@ async function buildTemplate(): Promise<string> {
     const draft = `${name}_draft`;
     await client.query(`DROP DATABASE IF EXISTS "${draft}" WITH (FORCE)`);
     await ensureDatabase(adminUrl, draft);
-    await migrateTo(onDatabase(serverUrl('TEST_OWNER_URL'), draft));
+    await migrate(onDatabase(serverUrl('TEST_OWNER_URL'), draft));
     await client.query(
       'SELECT pg_terminate_backend(pid) FROM pg_stat_activity WHERE datname = $1',
       [draft],
@@ -95,27 +95,21 @@ async function buildTemplate(): Promise<string> {
   return name;
 }
 
-const migrateModule = join(checkoutFolder, 'server/database/migrate.ts');
+/** What the shape of a migrated database depends on. */
+const schemaSources = ['server/migrations', 'server/database', 'server/jobs/queues.ts'];
 
-async function migrateTo(ownerUrl: string): Promise<void> {
-  if (!existsSync(migrateModule)) return;
-  const { migrate } = (await import(/* @vite-ignore */ pathToFileURL(migrateModule).href)) as {
-    migrate: (ownerUrl: string) => Promise<unknown>;
-  };
-  await migrate(ownerUrl);
+function schemaMark(): string {
+  const hash = createHash('sha256');
+  for (const file of schemaSources.flatMap(filesUnder))
+    hash.update(file).update(readFileSync(file));
+  return hash.digest('hex').slice(0, 16);
 }
 
-function migrationsMark(): string {
-  const folder = join(checkoutFolder, 'server/migrations');
-  const files = existsSync(folder)
-    ? readdirSync(folder, { recursive: true, encoding: 'utf8' })
-        .filter((file) => /\.(ts|sql)$/.test(file))
-        .sort()
-        .map((file) => join(folder, file))
-    : [];
-  const hash = createHash('sha256');
-  for (const file of [...files, migrateModule, join(checkoutFolder, 'server/database/roles.ts')]) {
-    if (existsSync(file)) hash.update(file).update(readFileSync(file));
-  }
-  return hash.digest('hex').slice(0, 16);
+function filesUnder(place: string): string[] {
+  const path = join(checkoutFolder, place);
+  if (statSync(path).isFile()) return [path];
+  return readdirSync(path, { recursive: true, encoding: 'utf8' })
+    .filter((name) => name.endsWith('.ts'))
+    .sort()
+    .map((name) => join(path, name));
 }
