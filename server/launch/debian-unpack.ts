@@ -1,20 +1,26 @@
-import { existsSync, mkdirSync, readdirSync, rmSync } from 'node:fs';
+import { existsSync, mkdirSync, readdirSync, renameSync, rmSync } from 'node:fs';
 import { join } from 'node:path';
 import { checkoutFolder, localFolder, makeLocalFolder } from './checkout';
 import { run, type CommandResult } from './command';
 
 const unpackFolder = join(localFolder, 'debian');
 
-/** The folder of packages unpacked by an ordinary user, and the environment their programs need. */
-export function unpackedRoot(): { folder: string; env: NodeJS.ProcessEnv } | undefined {
-  if (!existsSync(join(unpackFolder, 'usr'))) return undefined;
-  const libraries = libraryFolders(unpackFolder);
+export interface UnpackedRoot {
+  folder: string;
+  env: NodeJS.ProcessEnv;
+}
+
+/** The folder a package was unpacked into by an ordinary user, and the environment its programs need. */
+export function unpackedRoot(packageName: string): UnpackedRoot | undefined {
+  const root = join(unpackFolder, packageName);
+  if (!existsSync(root)) return undefined;
+  const libraries = libraryFolders(root);
   const inherited = process.env.LD_LIBRARY_PATH;
   return {
-    folder: unpackFolder,
+    folder: root,
     env: {
       LD_LIBRARY_PATH: [...libraries, ...(inherited ? [inherited] : [])].join(':'),
-      FONTCONFIG_PATH: existsSync('/etc/fonts') ? '/etc/fonts' : join(unpackFolder, 'etc/fonts'),
+      FONTCONFIG_PATH: existsSync('/etc/fonts') ? '/etc/fonts' : join(root, 'etc/fonts'),
     },
   };
 }
@@ -48,14 +54,20 @@ export async function unpackDebianPackage(packageName: string): Promise<CommandR
   if (fetched.code !== 0) {
     return { ...fetched, stderr: `${refreshed.stderr}\n${fetched.stderr}` };
   }
-  mkdirSync(unpackFolder, { recursive: true });
+  // Beside and renamed when whole, so that an interruption leaves nothing half unpacked.
+  const root = join(unpackFolder, packageName);
+  const partial = `${root}.partial`;
+  rmSync(partial, { recursive: true, force: true });
+  mkdirSync(partial, { recursive: true });
   for (const archive of readdirSync(archives).filter((name) => name.endsWith('.deb'))) {
-    const unpacked = await run('dpkg', ['-x', join(archives, archive), unpackFolder], {
+    const unpacked = await run('dpkg', ['-x', join(archives, archive), partial], {
       cwd: checkoutFolder,
     });
     if (unpacked.code !== 0) return unpacked;
     rmSync(join(archives, archive));
   }
+  rmSync(root, { recursive: true, force: true });
+  renameSync(partial, root);
   return fetched;
 }
 

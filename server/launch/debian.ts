@@ -37,7 +37,9 @@ export async function ensureDebianProgram(wish: DebianWish): Promise<DebianProgr
     say(`Installing ${wish.title} (Debian package ${wish.packageName}) ...`);
     await twice(`install ${wish.packageName}`, () => installAsRoot(prefix, wish.packageName));
   } else {
-    say(`Fetching ${wish.title} (Debian package ${wish.packageName}) into .local/debian ...`);
+    say(
+      `Fetching ${wish.title} (Debian package ${wish.packageName}) into .local/debian; no administrator rights are needed ...`,
+    );
     await twice(`fetch ${wish.packageName}`, () => unpackDebianPackage(wish.packageName));
   }
   const installed = await findDebianProgram(wish);
@@ -53,7 +55,7 @@ export async function ensureDebianProgram(wish: DebianWish): Promise<DebianProgr
 async function findDebianProgram(wish: DebianWish): Promise<DebianProgram | undefined> {
   const ofSystem = wish.find('');
   if (ofSystem) return { path: ofSystem, env: {} };
-  const root = unpackedRoot();
+  const root = unpackedRoot(wish.packageName);
   const unpacked = root && wish.find(root.folder);
   return unpacked ? { path: unpacked, env: root.env } : undefined;
 }
