@@ -48,7 +48,7 @@ async function givenDatabase(settings: LaunchSettings, secrets: Secrets): Promis
   if (!(await isAdministrator(given))) {
     throw new LaunchError(
       'setting_missing',
-      'The setting DATABASE_OWNER_URL is missing: DATABASE_URL is not an administrator, so name the role that owns the schema too.',
+      'Setting DATABASE_OWNER_URL is missing: DATABASE_URL is not an administrator, so name the role that owns the schema too.',
     );
   }
   const passwords = { owner: secrets.ownerPassword, app: secrets.appPassword };

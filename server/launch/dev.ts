@@ -16,7 +16,7 @@ try {
   const api = `http://127.0.0.1:${apiPort}`;
   const surroundings = await prepareSurroundings(settings, running, address);
 
-  const env = { ...surroundings.env, PORT: String(apiPort) };
+  const env = { ...surroundings.env, HOST: '127.0.0.1', PORT: String(apiPort) };
   const watched = [
     'node_modules/tsx/dist/cli.mjs',
     'watch',

@@ -7,7 +7,7 @@ export async function choosePort(asked: number | undefined, first: number): Prom
     if (await isFree(asked)) return asked;
     throw new LaunchError(
       'port_taken',
-      `The setting PORT is wrong: port ${asked} is taken; name a free one, or leave PORT out and one is found.`,
+      `Setting PORT is wrong: port ${asked} is taken; name a free one, or leave PORT out and one is found.`,
     );
   }
   for (let port = first; port < first + 200; port += 1) if (await isFree(port)) return port;
@@ -25,4 +25,11 @@ function canListen(port: number, host?: string): Promise<boolean> {
     probe.once('error', () => resolve(false));
     probe.listen({ port, host, exclusive: true }, () => probe.close(() => resolve(true)));
   });
+}
+
+/** Where this machine itself reaches a server that listens on `host`. */
+export function localAddress(host: string, port: number): string {
+  const everywhere = host === '0.0.0.0' || host === '::';
+  const name = everywhere ? '127.0.0.1' : host.includes(':') ? `[${host}]` : host;
+  return `http://${name}:${port}`;
 }

@@ -2,7 +2,7 @@ import { ensureBuilt } from './build';
 import { LaunchError } from './command';
 import { greet } from './greeting';
 import { waitForHealth } from './health';
-import { choosePort } from './ports';
+import { choosePort, localAddress } from './ports';
 import { Running } from './running';
 import { readLaunchSettings } from './settings';
 import { prepareSurroundings } from './surroundings';
@@ -12,7 +12,7 @@ const running = new Running();
 try {
   const settings = readLaunchSettings(process.env);
   const port = await choosePort(settings.port, 3000);
-  const address = `http://127.0.0.1:${port}`;
+  const address = localAddress(settings.config.HOST, port);
   await ensureBuilt('client', 'server');
   const surroundings = await prepareSurroundings(settings, running, address);
 

@@ -59,7 +59,7 @@ export async function prepareSurroundings(
     keepSecrets({ ...secrets, demoPassphrase });
   }
   return {
-    env: { ...env, QUARTZHOLD_DEMO: '1' },
+    env: { ...env, DEMO: 'true' },
     mailPageUrl: mail?.pageUrl,
     demoPassphrase,
   };
