@@ -31,8 +31,11 @@ export const lotsAndReadings: Migration = {
       parent_lot_id uuid REFERENCES lots,
       units_planned integer NOT NULL,
       units_measured integer NOT NULL DEFAULT 0,
+      units_lacking_temperatures integer NOT NULL DEFAULT 0,
       beyond_count integer,
       finding text CHECK (finding IN ('accept', 'hold')),
+      -- Did the sample of the first inspection meet the plan? The switching rules look at this, not at the disposition.
+      plan_met boolean,
       band_strip jsonb,
       current_analysis_id uuid,
       -- Raised whenever the set of readings or the criteria change: an older analysis can no longer be signed.
@@ -43,6 +46,8 @@ export const lotsAndReadings: Migration = {
     );
     CREATE UNIQUE INDEX lots_lot_number ON lots (lower(lot_number));
     CREATE INDEX lots_lot_number_find ON lots USING gin (lot_number gin_trgm_ops);
+    CREATE INDEX lots_purchase_order_find ON lots USING gin (purchase_order gin_trgm_ops);
+    CREATE INDEX lots_date_code ON lots (date_code);
     CREATE INDEX lots_received_on ON lots (received_on DESC, id);
     CREATE INDEX lots_state_since ON lots (state, state_since, id);
     CREATE INDEX lots_since ON lots (state_since DESC, id);

@@ -21,6 +21,16 @@ export const decisions: Migration = {
       UNIQUE (lot_id, version)
     );
 
+    -- An analysis never changes; all that may happen to it is being frozen, once.
+    CREATE FUNCTION keep_analysis() RETURNS trigger LANGUAGE plpgsql AS $$
+    BEGIN
+      IF OLD.frozen_at IS NOT NULL OR (to_jsonb(NEW) - 'frozen_at') <> (to_jsonb(OLD) - 'frozen_at') THEN
+        RAISE EXCEPTION 'an analysis never changes: % refused', TG_OP;
+      END IF;
+      RETURN NEW;
+    END $$;
+    CREATE TRIGGER analyses_keep BEFORE UPDATE ON analyses FOR EACH ROW EXECUTE FUNCTION keep_analysis();
+
     CREATE TABLE analysis_offsets (
       analysis_id uuid PRIMARY KEY REFERENCES analyses,
       -- Sorted offsets in ppm, Float64 little endian.
@@ -76,5 +86,6 @@ export const decisions: Migration = {
     ALTER TABLE receiver_revisions DROP CONSTRAINT receiver_revisions_approval_signature_id_fkey;
     ALTER TABLE part_revisions DROP CONSTRAINT part_revisions_approval_signature_id_fkey;
     DROP TABLE dispositions, signatures, analysis_offsets, analyses;
+    DROP FUNCTION keep_analysis();
   `,
 };

@@ -36,8 +36,10 @@ export class Lot extends Model<InferAttributes<Lot>, InferCreationAttributes<Lot
   declare parentLotId: CreationOptional<string | null>;
   declare unitsPlanned: number;
   declare unitsMeasured: CreationOptional<number>;
+  declare unitsLackingTemperatures: CreationOptional<number>;
   declare beyondCount: CreationOptional<number | null>;
   declare finding: CreationOptional<'accept' | 'hold' | null>;
+  declare planMet: CreationOptional<boolean | null>;
   declare bandStrip: CreationOptional<z.infer<typeof BandStripView> | null>;
   declare currentAnalysisId: CreationOptional<string | null>;
   declare dataVersion: CreationOptional<number>;
@@ -75,8 +77,10 @@ export class Lot extends Model<InferAttributes<Lot>, InferCreationAttributes<Lot
         parentLotId: DataTypes.UUID,
         unitsPlanned: { type: DataTypes.INTEGER, allowNull: false },
         unitsMeasured: { type: DataTypes.INTEGER, allowNull: true },
+        unitsLackingTemperatures: { type: DataTypes.INTEGER, allowNull: true },
         beyondCount: DataTypes.INTEGER,
         finding: DataTypes.TEXT,
+        planMet: DataTypes.BOOLEAN,
         bandStrip: DataTypes.JSONB,
         currentAnalysisId: DataTypes.UUID,
         dataVersion: { type: DataTypes.INTEGER, allowNull: true },

@@ -13,10 +13,14 @@ export function revisionInForce<R extends Revision>(revisions: R[], day: string)
   return latest(candidates, (r) => r.effectiveFrom!);
 }
 
-/** What a lot is registered against: the revision in force, else the newest draft, whose approval the lot then owes. */
+/**
+ * What a lot is registered against: the revision in force that day; else the first one ever approved, before which there
+ * was none; else the newest draft, whose approval the lot then owes.
+ */
 export function revisionForReceipt<R extends Revision>(revisions: R[], day: string): R | null {
   return (
     revisionInForce(revisions, day) ??
+    earliestApproved(revisions) ??
     latest(
       revisions.filter((r) => r.state === 'draft'),
       () => '',
@@ -34,6 +38,11 @@ export function mayTakeEffect(
   today: string,
 ): boolean {
   return effectiveFrom >= today || !revisions.some((r) => r.state === 'approved');
+}
+
+function earliestApproved<R extends Revision>(revisions: R[]): R | null {
+  const approved = revisions.filter((r) => r.state === 'approved' && r.effectiveFrom !== null);
+  return approved.sort((a, b) => a.effectiveFrom!.localeCompare(b.effectiveFrom!))[0] ?? null;
 }
 
 function latest<R extends Revision>(revisions: R[], key: (revision: R) => string): R | null {

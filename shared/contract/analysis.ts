@@ -90,6 +90,8 @@ export const AnalysisResult = z.object({
   units: z.number().int(),
   readings: z.number().int(),
   unitsPlanned: z.number().int(),
+  /** Units not yet read at every required temperature. */
+  unitsLackingTemperatures: z.number().int(),
   lotSize: z.number().int(),
   referenceTemperatureC: finite,
   nominalFrequencyHz: z.string(),

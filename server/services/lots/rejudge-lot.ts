@@ -1,0 +1,103 @@
+import { act } from '../../history/act';
+import { type Actor } from '../../http/actor';
+import { Conflict, InvalidInput, NotAllowed } from '../../http/errors';
+import { LotReceiver, PartRevision, ReceiverRevision } from '../../models';
+import { mayRejudge } from '../../policies/lots';
+import { analyseLot } from '../analysis/analyse-lot';
+import { proveSigner } from '../signing/prove-signer';
+import { sign } from '../signing/sign';
+import { planOf } from './criteria-at-receipt';
+import { lockLot } from './find-lot';
+import { lotFacts } from './lot-facts';
+
+export interface Rejudgement {
+  password: string;
+  reason: string;
+  partRevisionId: string;
+  receiverRevisionIds?: string[];
+}
+
+/**
+ * Act `lot.rejudge`: the only way a lot comes under newer criteria than those in force at receipt. The earlier analysis and
+ * whatever was signed on it stay as they were.
+ */
+export async function rejudgeLot(actor: Actor, id: string, input: Rejudgement): Promise<void> {
+  await proveSigner(actor, input.password);
+  await act(actor, 'lot.rejudge', async (transaction) => {
+    const lot = await lockLot(id, transaction);
+    const current = (await PartRevision.findByPk(lot.partRevisionId, { transaction }))!;
+    const { facts } = await lotFacts(lot, current.criteria, transaction);
+    if (!mayRejudge(actor, facts)) {
+      throw facts.awaitingSecondFrom
+        ? new Conflict(
+            'disposition.awaiting_second',
+            'A concession waits for its second signature. Sign or refuse it first.',
+          )
+        : new NotAllowed('A rejected lot is not judged again.');
+    }
+    const revision = await PartRevision.findOne({
+      where: { id: input.partRevisionId, partId: lot.partId },
+      transaction,
+    });
+    if (revision?.state !== 'approved')
+      throw new InvalidInput('Choose an approved revision of this part.', {
+        partRevisionId: 'Not an approved revision of this part.',
+      });
+    const beforeLinks = await LotReceiver.findAll({ where: { lotId: id }, transaction });
+    const before = {
+      partRevisionId: lot.partRevisionId,
+      receiverRevisionIds: beforeLinks.map((link) => link.receiverRevisionId).sort(),
+    };
+    const receiverRevisionIds = [
+      ...new Set(input.receiverRevisionIds ?? before.receiverRevisionIds),
+    ].sort();
+    const known = await ReceiverRevision.count({
+      where: { id: receiverRevisionIds, state: 'approved' },
+      transaction,
+    });
+    if (known !== receiverRevisionIds.length)
+      throw new InvalidInput('Choose approved receiver revisions.', {
+        receiverRevisionIds: 'One of these is not approved.',
+      });
+    if (
+      revision.id === before.partRevisionId &&
+      receiverRevisionIds.join() === before.receiverRevisionIds.join()
+    ) {
+      throw new Conflict('lot.same_criteria', 'The lot is judged by these criteria already.');
+    }
+    const after = { partRevisionId: revision.id, receiverRevisionIds };
+    const signature = await sign(transaction, {
+      actor,
+      recordType: 'lot',
+      recordId: id,
+      recordVersion: lot.version + 1,
+      meaning: 'judged by other criteria',
+      reason: input.reason,
+      content: { lotNumber: lot.lotNumber, before, after },
+    });
+    lot.set({
+      partRevisionId: revision.id,
+      dataVersion: lot.dataVersion + 1,
+      version: lot.version + 1,
+    });
+    lot.set({ unitsPlanned: planOf(lot, revision.criteria.samplingRule).sampleSize });
+    await lot.save({ transaction });
+    await LotReceiver.destroy({ where: { lotId: id }, transaction });
+    await LotReceiver.bulkCreate(
+      receiverRevisionIds.map((receiverRevisionId) => ({ lotId: id, receiverRevisionId })),
+      { transaction },
+    );
+    await analyseLot(transaction, id);
+    return {
+      result: undefined,
+      entry: {
+        recordType: 'lot',
+        recordId: id,
+        lotId: id,
+        before,
+        after: { ...after, signatureId: signature.id },
+        reason: input.reason,
+      },
+    };
+  });
+}
