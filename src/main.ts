@@ -1,0 +1,21 @@
+import { createApp } from 'vue';
+import { createPinia } from 'pinia';
+import { VueQueryPlugin } from '@tanstack/vue-query';
+import './styles/fonts.css';
+import './styles/tokens.css';
+import './styles/base.css';
+import './styles/element.css';
+import './styles/print.css';
+import App from './App.vue';
+import { makeQueryClient } from './api/query-client';
+import { i18n } from './locales';
+import { makeRouter } from './router';
+import { usePreferences } from './stores/preferences';
+
+const app = createApp(App);
+app.use(createPinia());
+usePreferences();
+app.use(i18n);
+app.use(VueQueryPlugin, { queryClient: makeQueryClient() });
+app.use(makeRouter());
+app.mount('#app');
