@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { chownSync, existsSync, mkdirSync } from 'node:fs';
+import { chownSync, existsSync, mkdirSync, rmdirSync } from 'node:fs';
 import { join } from 'node:path';
 import { checkoutFolder, localFolder, makeLocalFolder } from '../launch/checkout';
 import { LaunchError, run } from '../launch/command';
@@ -55,13 +55,14 @@ export async function clusterHome(name: string, account: ServerAccount): Promise
 }
 
 async function ownedAndReachable(folder: string, account: ServerAccount): Promise<boolean> {
+  const fresh = !existsSync(folder);
   try {
-    const fresh = !existsSync(folder);
     mkdirSync(folder, { recursive: true });
     if (fresh) chownSync(folder, account.uid!, account.gid!);
   } catch {
     return false;
   }
   const probe = await run('test', ['-w', folder], { ...account, cwd: '/' });
+  if (probe.code !== 0 && fresh) rmdirSync(folder);
   return probe.code === 0;
 }

@@ -100,7 +100,7 @@ function listen(child: ChildProcess, program: ProgramToStart): () => string[] {
   const last: string[] = [];
   let sink: NodeJS.WritableStream = process.stdout;
   if (program.log === 'file') {
-    mkdirSync(logFolder, { recursive: true });
+    mkdirSync(logFolder, { recursive: true, mode: 0o700 });
     const file = join(logFolder, `${program.title}.log`);
     if (existsSync(file)) renameSync(file, `${file}.before`);
     sink = createWriteStream(file);
