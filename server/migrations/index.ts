@@ -4,6 +4,7 @@ import { lotsAndReadings } from './003-lots-and-readings';
 import { decisions } from './004-decisions';
 import { holdsAndMail } from './005-holds-and-mail';
 import { history } from './006-history';
+import { holdRecords } from './020-hold-records';
 import { type Migration } from './migration';
 
 /** In order. A step that has run anywhere is never edited; a change is a new step. */
@@ -14,4 +15,5 @@ export const migrations: Migration[] = [
   decisions,
   holdsAndMail,
   history,
+  holdRecords,
 ];

@@ -7,6 +7,8 @@ import {
   type NonAttribute,
   type Sequelize,
 } from 'sequelize';
+import { type z } from 'zod';
+import { type BandStripView } from '@shared/contract/lots';
 import { type HoldMessage } from './hold-message';
 import { type Lot } from './lot';
 import { type Supplier } from './supplier';
@@ -21,6 +23,9 @@ export class Hold extends Model<InferAttributes<Hold>, InferCreationAttributes<H
   declare analysisId: string;
   declare state: CreationOptional<'open' | 'acknowledged' | 'answered' | 'closed'>;
   declare reason: string;
+  /** Sentences of the analysis and the picture as they stood when the hold was signed; the lot may move on. */
+  declare finding: CreationOptional<string[]>;
+  declare bandStrip: CreationOptional<z.infer<typeof BandStripView> | null>;
   declare acknowledgementDueAt: Date;
   declare answerDueAt: Date;
   declare acknowledgedAt: CreationOptional<Date | null>;
@@ -47,6 +52,8 @@ export class Hold extends Model<InferAttributes<Hold>, InferCreationAttributes<H
         analysisId: { type: DataTypes.UUID, allowNull: false },
         state: { type: DataTypes.TEXT, allowNull: true },
         reason: { type: DataTypes.TEXT, allowNull: false },
+        finding: { type: DataTypes.JSONB, allowNull: true },
+        bandStrip: DataTypes.JSONB,
         acknowledgementDueAt: { type: DataTypes.DATE(3), allowNull: false },
         answerDueAt: { type: DataTypes.DATE(3), allowNull: false },
         acknowledgedAt: DataTypes.DATE(3),

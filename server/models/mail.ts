@@ -28,6 +28,7 @@ export class Mail extends Model<InferAttributes<Mail>, InferCreationAttributes<M
   declare lotId: CreationOptional<string | null>;
   declare state: CreationOptional<'queued' | 'accepted' | 'refused' | 'dead'>;
   declare tries: CreationOptional<number>;
+  declare uncertainTries: CreationOptional<number>;
   declare nextTryAt: CreationOptional<Date | null>;
   declare leaseToken: CreationOptional<string | null>;
   declare leaseUntil: CreationOptional<Date | null>;
@@ -58,6 +59,7 @@ export class Mail extends Model<InferAttributes<Mail>, InferCreationAttributes<M
         lotId: DataTypes.UUID,
         state: { type: DataTypes.TEXT, allowNull: true },
         tries: { type: DataTypes.INTEGER, allowNull: true },
+        uncertainTries: { type: DataTypes.INTEGER, allowNull: true },
         nextTryAt: DataTypes.DATE(3),
         leaseToken: DataTypes.UUID,
         leaseUntil: DataTypes.DATE(3),
