@@ -1,0 +1,3 @@
+import { startServer } from './start-server';
+
+await startServer();
