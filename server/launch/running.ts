@@ -14,7 +14,8 @@ export interface ProgramToStart {
   log: 'console' | 'file';
 }
 
-const graceMs = 20_000;
+// The server gives itself 25 seconds to end what it has begun.
+const graceMs = 30_000;
 const linesKept = 25;
 const logFolder = join(localFolder, 'logs');
 
