@@ -4,7 +4,7 @@ import {
   farEndDistribution,
   measuredFarEnd,
 } from './far-end';
-import { countBeyondPerUnit } from './lot-pairs';
+import { countBeyondPerUnit, finiteOffsets, sortedOffsets } from './lot-pairs';
 
 /** For each unit the probability, over far ends and Doppler, that |unit - far end + Doppler| > limit. */
 export type SharesBeyond = (limitPpm: number) => Float64Array;
@@ -20,15 +20,29 @@ function directShares(units: Float64Array, far: FarEndDistribution, limit: numbe
   return units.map((u) => clampShare(far.cdf(u - limit) + far.upperTail(u + limit)));
 }
 
+/** A far end anywhere in +/-tolerance: two straight ramps, no function call per unit. */
+function uniformShares(units: Float64Array, tolerance: number, limit: number): Float64Array {
+  const shares = new Float64Array(units.length);
+  const clear = limit - tolerance;
+  const width = 2 * tolerance;
+  for (let i = 0; i < units.length; i += 1) {
+    const u = units[i]!;
+    const over = Math.min(Math.max(u - clear, 0), width) + Math.min(Math.max(-u - clear, 0), width);
+    shares[i] = over >= width ? 1 : over / width;
+  }
+  return shares;
+}
+
 function tabulatedShares(
   units: Float64Array,
   far: FarEndDistribution,
   limit: number,
 ): Float64Array | null {
-  const low = units[0]!;
+  if (!(far.scalePpm > 0) || units.length < TABULATE_FROM) return null;
+  const { low, high } = rangeOf(units);
   const step = far.scalePpm / PIECES_PER_SCALE;
-  const pieces = Math.ceil((units[units.length - 1]! - low) / step) + 1;
-  if (!(far.scalePpm > 0) || units.length < TABULATE_FROM || pieces > units.length / 4) return null;
+  const pieces = Math.ceil((high - low) / step) + 1;
+  if (pieces > units.length / 4) return null;
   const share = new Float64Array(pieces + 1);
   const slope = new Float64Array(pieces + 1);
   for (let i = 0; i <= pieces; i += 1) {
@@ -36,15 +50,28 @@ function tabulatedShares(
     share[i] = far.cdf(u - limit) + far.upperTail(u + limit);
     slope[i] = (far.density(u - limit) - far.density(u + limit)) * step;
   }
-  return units.map((u) => {
-    const at = (u - low) / step;
+  const shares = new Float64Array(units.length);
+  for (let k = 0; k < units.length; k += 1) {
+    const at = (units[k]! - low) / step;
     const i = Math.floor(at);
     const t = at - i;
     const s = 1 - t;
     const left = share[i]! * (1 + 2 * t) + slope[i]! * t;
     const right = share[i + 1]! * (1 + 2 * s) - slope[i + 1]! * s;
-    return clampShare(left * s * s + right * t * t);
-  });
+    shares[k] = clampShare(left * s * s + right * t * t);
+  }
+  return shares;
+}
+
+function rangeOf(values: Float64Array): { low: number; high: number } {
+  let low = Infinity;
+  let high = -Infinity;
+  for (let i = 0; i < values.length; i += 1) {
+    const value = values[i]!;
+    if (value < low) low = value;
+    if (value > high) high = value;
+  }
+  return { low, high };
 }
 
 /**
@@ -78,17 +105,18 @@ function rampedShares(
 }
 
 /**
- * Per-unit shares beyond a limit for a sorted lot.
- * @param units offsets of the units, ppm, sorted
+ * Per-unit shares beyond a limit.
+ * @param unitsPpm offsets of the units, ppm, any order; sorted first where the far end is a measured lot
  * @param uniformDopplerPpm half-width of a Doppler shift spread evenly; 0 for none
  */
 export function sharesBeyond(
-  units: Float64Array,
+  unitsPpm: ArrayLike<number>,
   farEnd: FarEnd,
   uniformDopplerPpm: number,
 ): SharesBeyond {
-  const everything = () => new Float64Array(units.length).fill(1);
+  const everything = () => new Float64Array(unitsPpm.length).fill(1);
   if (farEnd.model === 'measured') {
+    const units = sortedOffsets(unitsPpm, 'unitsPpm');
     const farEnds = measuredFarEnd(farEnd);
     return (limit) => {
       if (limit < 0) return everything();
@@ -100,10 +128,14 @@ export function sharesBeyond(
       return shares;
     };
   }
+  const units = finiteOffsets(unitsPpm, 'unitsPpm');
   const far = farEndDistribution(farEnd, uniformDopplerPpm);
   return (limit) => {
     if (limit < 0) return everything();
     if ('fixedPpm' in far) return units.map((u) => (Math.abs(u - far.fixedPpm) > limit ? 1 : 0));
+    if (farEnd.model === 'uniform' && uniformDopplerPpm === 0) {
+      return uniformShares(units, farEnd.tolerancePpm, limit);
+    }
     return tabulatedShares(units, far, limit) ?? directShares(units, far, limit);
   };
 }

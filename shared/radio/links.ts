@@ -1,11 +1,10 @@
 import { sharesBeyond } from './beyond-shares';
 import { requireFinite, requireNonNegative } from './errors';
 import { type FarEnd, type LinkDoppler } from './far-end';
-import { sortedOffsets } from './lot-pairs';
 import { type ShareBoundMethod, chernoffUpper, shareUpperBound } from './share-bound';
 
 export interface LinkQuestion {
-  /** Offsets of the measured units, ppm, any order; a sorted Float64Array is used without a copy. */
+  /** Offsets of the measured units, ppm, any order. */
   readonly unitsPpm: ArrayLike<number>;
   readonly farEnd: FarEnd;
   readonly doppler?: LinkDoppler;
@@ -78,13 +77,12 @@ function boundOf(
  * measured far end the Chernoff-Hoeffding bound for averages over pairs is used. The uncertainty of
  * the readings is not in it.
  *
- * Cost: order n for uniform and normal far ends, n + m for a measured one, after sorting.
+ * Cost: order n for uniform and normal far ends, n + m for a measured one, after sorting both.
  *
  * @throws RadioError `too_few`, `not_finite`, `out_of_range`
  * @see W. Hoeffding (1963); A. Maurer and M. Pontil (2009)
  */
 export function linkShares(question: LinkQuestion): LinkShares {
-  const units = sortedOffsets(question.unitsPpm, 'unitsPpm');
   const doppler = question.doppler ?? { model: 'worst-case', halfWidthPpm: 0 };
   const dopplerPpm = requireNonNegative(doppler.halfWidthPpm, 'doppler.halfWidthPpm');
   const worstCasePpm =
@@ -96,13 +94,18 @@ export function linkShares(question: LinkQuestion): LinkShares {
     frontEnd,
   );
 
-  const beyond = sharesBeyond(units, question.farEnd, doppler.model === 'uniform' ? dopplerPpm : 0);
+  const beyond = sharesBeyond(
+    question.unitsPpm,
+    question.farEnd,
+    doppler.model === 'uniform' ? dopplerPpm : 0,
+  );
   const first = beyond(symbolRate - worstCasePpm);
   const second = beyond(frontEnd - worstCasePpm);
+  const units = first.length;
   const left: Sums = { sum: 0, squares: 0 };
   const between: Sums = { sum: 0, squares: 0 };
   const outside: Sums = { sum: 0, squares: 0 };
-  for (let i = 0; i < units.length; i += 1) {
+  for (let i = 0; i < units; i += 1) {
     const p = first[i]!;
     const q = Math.min(p, second[i]!);
     const r = p - q;
@@ -114,15 +117,15 @@ export function linkShares(question: LinkQuestion): LinkShares {
     outside.squares += q * q;
   }
   const farEnds = question.farEnd.model === 'measured' ? question.farEnd.offsetsPpm.length : null;
-  const beyondSymbolRate = boundOf(left, units.length, farEnds, question);
+  const beyondSymbolRate = boundOf(left, units, farEnds, question);
   return {
-    units: units.length,
+    units,
     symbolRate: {
       share: 1 - beyondSymbolRate.share,
       lowerBound: 1 - beyondSymbolRate.upperBound,
     },
-    oversampled: boundOf(between, units.length, farEnds, question),
-    outsideFrontEnd: boundOf(outside, units.length, farEnds, question),
+    oversampled: boundOf(between, units, farEnds, question),
+    outsideFrontEnd: boundOf(outside, units, farEnds, question),
     beyondSymbolRate,
   };
 }

@@ -50,23 +50,21 @@ function momentsOf(values: Float64Array) {
   return { mean, variance: squares / values.length };
 }
 
-function isSorted(values: ArrayLike<number>): boolean {
-  for (let i = 1; i < values.length; i += 1) {
-    if (!(values[i - 1]! <= values[i]!)) return false;
-  }
-  return true;
+/** The values as a Float64Array, the same one if they are one. @throws RadioError `too_few`, `not_finite` */
+export function finiteOffsets(values: ArrayLike<number>, argument: string): Float64Array {
+  if (values.length === 0)
+    throw new RadioError('too_few', argument, 'must hold at least one offset');
+  const offsets = values instanceof Float64Array ? values : Float64Array.from(values);
+  for (let i = 0; i < offsets.length; i += 1) requireFinite(offsets[i]!, argument);
+  return offsets;
 }
 
 /** The values sorted; a sorted Float64Array is taken as it is. @throws RadioError `too_few`, `not_finite` */
 export function sortedOffsets(values: ArrayLike<number>, argument: string): Float64Array {
-  if (values.length === 0)
-    throw new RadioError('too_few', argument, 'must hold at least one offset');
-  const sorted =
-    values instanceof Float64Array && isSorted(values) ? values : Float64Array.from(values).sort();
-  // A sort puts -Infinity first, Infinity and NaN last, so the ends tell of every value.
-  requireFinite(sorted[0]!, argument);
-  requireFinite(sorted[sorted.length - 1]!, argument);
-  return sorted;
+  const offsets = finiteOffsets(values, argument);
+  let sorted = true;
+  for (let i = 1; i < offsets.length && sorted; i += 1) sorted = offsets[i - 1]! <= offsets[i]!;
+  return sorted ? offsets : offsets.slice().sort();
 }
 
 /**

@@ -1,8 +1,12 @@
 import { parseDecimal, powerOfTen, ratioToNumber } from './decimal';
-import { RadioError, requireFinite, requireNonNegative } from './errors';
+import { RadioError, requireFinite, requireNonNegative, requireWithin } from './errors';
 
 /** 2^12 terms of long integers still answer at once; a budget has seven contributions. */
 const MOST_TERMS = 12;
+/** Values below count as zero, values above its inverse are refused: the integers stay short. */
+const LEAST_VALUE = 1e-30;
+
+const atLeast = (value: number): number => (Math.abs(value) < LEAST_VALUE ? 0 : value);
 
 /**
  * P(|S| > limit) for a sum S of independent rectangular contributions on +/-w_i.
@@ -19,13 +23,16 @@ const MOST_TERMS = 12;
  */
 export function rectangularSumBeyond(halfWidths: readonly number[], limit: number): number {
   requireFinite(limit, 'limit');
-  const widths = halfWidths.filter((w) => requireNonNegative(w, 'halfWidths') > 0);
+  const widths = halfWidths
+    .map((w) => atLeast(requireNonNegative(w, 'halfWidths')))
+    .filter((w) => requireWithin(w, 0, 1 / LEAST_VALUE, 'halfWidths') > 0);
   if (limit < 0) return 1;
   if (widths.length === 0) return 0;
   if (widths.length > MOST_TERMS) {
     throw new RadioError('too_many', 'halfWidths', `must hold at most ${MOST_TERMS} contributions`);
   }
-  const decimals = [limit, ...widths].map((value) => parseDecimal(String(value)));
+  if (limit >= widths.reduce((sum, w) => sum + w, 0) * (1 + 1e-9)) return 0;
+  const decimals = [atLeast(limit), ...widths].map((value) => parseDecimal(String(value)));
   const scale = Math.max(...decimals.map((value) => value.scale));
   const [limitUnits = 0n, ...w] = decimals.map((d) => d.units * powerOfTen(scale - d.scale));
 
