@@ -1,6 +1,5 @@
-import erfc from '@stdlib/math-base-special-erfc';
 import { requireCount, requireFinite, requireSpread } from './checks';
-import { normalLogCdf } from './distributions/normal';
+import { tabulatedNormalLogCdf } from './numeric/normal-log-table';
 
 /** Anderson-Darling test of normality with mean and standard deviation estimated. */
 export interface NormalityTest {
@@ -25,21 +24,10 @@ export function andersonDarling(sorted: Float64Array, mean: number, sd: number):
   requireFinite(mean, 'mean');
   requireSpread(sd, 'sd');
   const n = sorted.length;
-  const scale = Math.SQRT1_2 / sd;
   let sum = 0;
   for (let i = 0; i < n; i += 1) {
-    // Both logarithms of one value are weighed together, so each value costs one error function.
-    const x = (sorted[i]! - mean) * scale;
-    const up = 2 * i + 1;
-    const down = 2 * (n - i) - 1;
-    const tail = 0.5 * erfc(x < 0 ? -x : x);
-    if (tail > 1e-290) {
-      const logTail = Math.log(tail);
-      const logRest = Math.log1p(-tail);
-      sum += x < 0 ? up * logTail + down * logRest : up * logRest + down * logTail;
-    } else {
-      sum += (x < 0 ? up : down) * normalLogCdf(-Math.abs(x) * Math.SQRT2);
-    }
+    const z = (sorted[i]! - mean) / sd;
+    sum += (2 * i + 1) * tabulatedNormalLogCdf(z) + (2 * (n - i) - 1) * tabulatedNormalLogCdf(-z);
   }
   const a2 = -n - sum / n;
   const a2Adjusted = a2 * (1 + 0.75 / n + 2.25 / (n * n));

@@ -1,5 +1,6 @@
 import { requireCount, requireFinite, requirePositive, requireSpread } from './checks';
 import { normalCdf, normalDensity, normalUpperTail } from './distributions/normal';
+import { tabulatedNormalLogCdf } from './numeric/normal-log-table';
 import { requireAllFinite } from './sorted';
 import { StatisticsError } from './errors';
 
@@ -122,7 +123,9 @@ export function lotNormalExceedance(
   let sum = 0;
   for (let i = 0; i < offsets.length; i += 1) {
     const gap = offsets[i]! - far.mean;
-    sum += normalCdf((gap - limit) / far.sd) + normalCdf((-gap - limit) / far.sd);
+    sum +=
+      Math.exp(tabulatedNormalLogCdf((gap - limit) / far.sd)) +
+      Math.exp(tabulatedNormalLogCdf((-gap - limit) / far.sd));
   }
   return sum / offsets.length;
 }
