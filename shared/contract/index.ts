@@ -15,7 +15,7 @@ import * as suppliers from './suppliers';
 import * as uploads from './uploads';
 import * as work from './work';
 
-const areas = {
+export const areas = {
   session,
   people,
   suppliers,
