@@ -1,4 +1,4 @@
-import nodemailer from 'nodemailer';
+import nodemailer, { type SendMailOptions, type Transporter } from 'nodemailer';
 import { type Mail } from '../models';
 import { config } from '../config';
 import { envelopeAddress, headerText } from './header-text';
@@ -26,7 +26,7 @@ interface SmtpError extends Error {
 /** One mail over one connection of its own: pooled connections go stale and re-queue behind our back. */
 export async function deliver(mail: Mail): Promise<Outcome> {
   const progress = { contentAskedFor: false };
-  let transport: nodemailer.Transporter | undefined;
+  let transport: Transporter | undefined;
   let cut: NodeJS.Timeout | undefined;
   try {
     transport = nodemailer.createTransport(transportOptions(progress));
@@ -48,7 +48,7 @@ export async function deliver(mail: Mail): Promise<Outcome> {
   }
 }
 
-function transportOptions(progress: { contentAskedFor: boolean }): nodemailer.TransportOptions {
+function transportOptions(progress: { contentAskedFor: boolean }) {
   const quiet = () => undefined;
   return {
     url: config().SMTP_URL,
@@ -72,10 +72,10 @@ function transportOptions(progress: { contentAskedFor: boolean }): nodemailer.Tr
         if (entry?.tnx === 'server' && /^354/.test(String(text))) progress.contentAskedFor = true;
       },
     },
-  } as nodemailer.TransportOptions;
+  };
 }
 
-function message(mail: Mail): nodemailer.SendMailOptions {
+function message(mail: Mail): SendMailOptions {
   const address = envelopeAddress(mail.toEmail);
   return {
     from: config().MAIL_FROM,
