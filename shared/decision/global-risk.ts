@@ -12,8 +12,8 @@ export interface GlobalRisk {
   consumersRisk: number;
   /** A unit conforms and is refused: of all units. */
   producersRisk: number;
-  /** Share conforming among the units accepted. */
-  conformingOfAccepted: number;
+  /** Share conforming among the units accepted; null when none is accepted. */
+  conformingOfAccepted: number | null;
 }
 
 /** Beyond so many standard deviations nothing is left that a double could show beside 1. */
@@ -27,7 +27,8 @@ const REACH = 9;
  * @param process mean and standard deviation of the true values, sd above zero
  * @param standardUncertaintyPpm u of a reading, above zero
  * @param limits specification limits
- * @param acceptance acceptance limits; wider or narrower than the limits
+ * @param acceptance acceptance limits; wider or narrower than the limits; when guard bands leave nothing between them,
+ *   no unit is accepted
  * @throws StatisticsError when an argument is out of range
  * Source: JCGM 106:2012, clause 9.4 (from memory).
  */
@@ -43,6 +44,15 @@ export function globalRisk(
   requirePositive(sdPpm, 'process.sdPpm');
   requirePositive(u, 'standardUncertaintyPpm');
   requireLimits(limits);
+  const conformingBefore = conformingProbability(meanPpm, sdPpm, limits).conforming;
+  if (leavesNothing(acceptance))
+    return {
+      conformingBefore,
+      accepted: 0,
+      consumersRisk: 0,
+      producersRisk: conformingBefore,
+      conformingOfAccepted: null,
+    };
   requireLimits(acceptance);
   const density = (e: number) => normalDensity((e - meanPpm) / sdPpm) / sdPpm;
   const acceptedAt = (e: number) => conformingProbability(e, u, acceptance).conforming;
@@ -58,7 +68,6 @@ export function globalRisk(
       producersRisk += integrate((e) => density(e) * refusedAt(e), from, to, 1);
     else consumersRisk += integrate((e) => density(e) * acceptedAt(e), from, to, 1);
   }
-  const conformingBefore = conformingProbability(meanPpm, sdPpm, limits).conforming;
   const spread = Math.hypot(sdPpm, u);
   const accepted = acceptedShare(meanPpm, spread, acceptance);
   return {
@@ -66,9 +75,12 @@ export function globalRisk(
     accepted,
     consumersRisk,
     producersRisk,
-    conformingOfAccepted: 1 - consumersRisk / accepted,
+    conformingOfAccepted: accepted > 0 ? 1 - consumersRisk / accepted : null,
   };
 }
+
+const leavesNothing = ({ lowPpm, highPpm }: Limits) =>
+  lowPpm !== null && highPpm !== null && lowPpm >= highPpm;
 
 function acceptedShare(meanPpm: number, spread: number, { lowPpm, highPpm }: Limits): number {
   const above = highPpm === null ? 0 : normalUpperTail((highPpm - meanPpm) / spread);

@@ -1,7 +1,7 @@
 import { requireFinite } from '../statistics/checks';
 import { requireLimits } from './checks';
 import { guardBandPpm } from './guard-band';
-import { isAbove, isBelow, isBeyond, type DecisionRule, type Limits } from './rule';
+import { isBeyond, type DecisionRule, type Limits } from './rule';
 
 export type UnitOutcome = 'conforming' | 'notProven' | 'nonconforming';
 
@@ -41,21 +41,26 @@ function verdictWithin(
   rule: DecisionRule,
   width: number,
 ): UnitVerdict {
-  const { lowPpm, highPpm } = limits;
-  const shift = (limit: number | null, by: number) => (limit === null ? null : limit + by);
   const beyond = isBeyond(offsetPpm, limits);
-  const nonconforming =
-    isBelow(offsetPpm, shift(lowPpm, -width)) || isAbove(offsetPpm, shift(highPpm, width));
-  const conforming =
-    !isBelow(offsetPpm, shift(lowPpm, width)) && !isAbove(offsetPpm, shift(highPpm, -width));
-  const outcome = nonconforming ? 'nonconforming' : conforming ? 'conforming' : 'notProven';
-  const accepted =
-    rule.kind === 'simple'
-      ? !beyond
-      : rule.kind === 'guardedAcceptance'
-        ? conforming
-        : !nonconforming;
-  return { outcome, beyond, accepted };
+  const outcome = isBeyond(offsetPpm, moved(limits, width))
+    ? 'nonconforming'
+    : isBeyond(offsetPpm, moved(limits, -width))
+      ? 'notProven'
+      : 'conforming';
+  return { outcome, beyond, accepted: taken(rule, outcome, beyond) };
+}
+
+/** The limits let out by so much on each side; drawn in when it is below zero. */
+function moved({ lowPpm, highPpm }: Limits, outward: number): Limits {
+  return {
+    lowPpm: lowPpm === null ? null : lowPpm - outward,
+    highPpm: highPpm === null ? null : highPpm + outward,
+  };
+}
+
+function taken(rule: DecisionRule, outcome: UnitOutcome, beyond: boolean): boolean {
+  if (rule.kind === 'simple') return !beyond;
+  return rule.kind === 'guardedAcceptance' ? outcome === 'conforming' : outcome !== 'nonconforming';
 }
 
 export interface VerdictCounts {
@@ -81,22 +86,33 @@ export function countVerdicts(
 ): VerdictCounts {
   requireLimits(limits);
   const width = guardBandPpm(rule, expandedUncertaintyPpm);
-  const counts: VerdictCounts = {
-    units: offsetsPpm.length,
-    conforming: 0,
-    notProvenInside: 0,
-    notProvenOutside: 0,
-    nonconforming: 0,
-    beyond: 0,
-    refused: 0,
-  };
+  const outer = moved(limits, width);
+  const inner = moved(limits, -width);
+  let [beyond, nonconforming, notConforming, notProvenOutside] = [0, 0, 0, 0];
+  // No object for each unit: a lot may hold a million.
   for (let index = 0; index < offsetsPpm.length; index += 1) {
-    requireFinite(offsetsPpm[index]!, 'offsetsPpm');
-    const { outcome, beyond, accepted } = verdictWithin(offsetsPpm[index]!, limits, rule, width);
-    if (outcome === 'notProven') counts[beyond ? 'notProvenOutside' : 'notProvenInside'] += 1;
-    else counts[outcome] += 1;
-    if (beyond) counts.beyond += 1;
-    if (!accepted) counts.refused += 1;
+    const offsetPpm = offsetsPpm[index]!;
+    requireFinite(offsetPpm, 'offsetsPpm');
+    const isOut = isBeyond(offsetPpm, limits);
+    const isProven = isBeyond(offsetPpm, outer);
+    if (isOut) beyond += 1;
+    if (isProven) nonconforming += 1;
+    else if (isOut) notProvenOutside += 1;
+    if (isProven || isBeyond(offsetPpm, inner)) notConforming += 1;
   }
-  return counts;
+  const units = offsetsPpm.length;
+  const refused = {
+    simple: beyond,
+    guardedAcceptance: notConforming,
+    guardedRejection: nonconforming,
+  }[rule.kind];
+  return {
+    units,
+    conforming: units - notConforming,
+    notProvenInside: notConforming - nonconforming - notProvenOutside,
+    notProvenOutside,
+    nonconforming,
+    beyond,
+    refused,
+  };
 }

@@ -116,6 +116,15 @@ describe('the verdict on a unit', () => {
         anyUncertainty,
         (offsets, rule, u) => {
           const counts = countVerdicts(Float64Array.from(offsets), limits, rule, u);
+          const verdicts = offsets.map((offset) => unitVerdict(offset, limits, rule, u));
+          const having = (outcome: string) =>
+            verdicts.filter((each) => each.outcome === outcome).length;
+          expect(counts.conforming).toBe(having('conforming'));
+          expect(counts.nonconforming).toBe(having('nonconforming'));
+          expect(counts.notProvenInside).toBe(
+            verdicts.filter((each) => each.outcome === 'notProven' && !each.beyond).length,
+          );
+          expect(counts.refused).toBe(verdicts.filter((each) => !each.accepted).length);
           expect(
             counts.conforming +
               counts.notProvenInside +
@@ -184,6 +193,15 @@ describe('risks', () => {
       ),
       { numRuns: 40 },
     );
+  });
+});
+
+describe('global risk where nothing can be accepted', () => {
+  it('falls wholly on the producer', () => {
+    const acceptance = acceptanceLimits(limits, guarded, 11);
+    const risk = globalRisk({ meanPpm: 0, sdPpm: 4 }, 1, limits, acceptance);
+    expect(risk).toMatchObject({ accepted: 0, consumersRisk: 0, conformingOfAccepted: null });
+    expect(risk.producersRisk).toBe(risk.conformingBefore);
   });
 });
 

@@ -5,6 +5,7 @@ import {
   operatingCharacteristic,
   shareAccepted,
 } from '@shared/sampling/operating-characteristic';
+import { planSource } from '@shared/sampling/plan-source';
 import { planFor } from '@shared/sampling/plan';
 import { INSPECTION_LEVELS, SEVERITIES, type SamplingRule } from '@shared/sampling/rule';
 import { AQL_PERCENTS } from '@shared/sampling/tables/attribute-master';
@@ -212,5 +213,30 @@ describe('measuring more units than the plan asked for', () => {
     const atAql = (each: typeof plan) => acceptanceProbability({ ...each, lotSize: 1e7 }, 0.0025);
     expect(atAql(wide)).toBeGreaterThanOrEqual(atAql(plan));
     expect(shareAccepted(wide, 0.1)).toBeLessThan(shareAccepted(plan, 0.1));
+  });
+});
+
+describe('the source of a plan', () => {
+  it('says what comes from a standard and what is recomputed', () => {
+    const attribute = planFor({ kind: 'attribute', level: 'II', aqlPercent: 0.25 }, 8000);
+    expect(planSource(attribute)).toContain('MIL-STD-105E (1989)');
+    expect(planSource(attribute)).not.toContain('our own');
+    expect(planSource(widenPlan(attribute, 1000))).toContain('our own');
+    const known = planFor({ kind: 'variables', level: 'II', aqlPercent: 1 }, 2000);
+    expect(plain(planSource(known))).toContain('with 125 units by attributes (96.3 %)');
+    expect(planSource(known)).toContain('gives 1.93; the difference is \u22120.023');
+    const unknown = planFor({ kind: 'variables', level: 'II', aqlPercent: 0.25 }, 2000);
+    expect(planSource(unknown)).toContain('not on record here');
+    expect(planSource(planFor({ kind: 'everyUnit', allowedNonconforming: 0 }, 10))).toContain(
+      'nothing is estimated',
+    );
+    const zero = planFor(
+      { kind: 'zeroAcceptance', limitingQualityPercent: 1, consumersRisk: 0.1 },
+      500,
+    );
+    expect(planSource(zero)).toContain('hypergeometric');
+    expect(plain(zero.description)).toBe(
+      'zero acceptance, limiting quality 1 % at 10 % consumer’s risk, 184 units, accept on 0, reject on 1',
+    );
   });
 });
