@@ -5,7 +5,11 @@ import { join } from 'node:path';
 import { checkoutFolder } from '../server/launch/checkout';
 import { LaunchError } from '../server/launch/command';
 import { publishCluster } from './support/cluster';
-import { startThrowAwayCluster, type ThrowAwayCluster } from './support/throw-away-cluster';
+import {
+  startThrowAwayCluster,
+  throwAwayPrefix,
+  type ThrowAwayCluster,
+} from './support/throw-away-cluster';
 import type { Tally } from './support/tally-reporter';
 
 /*
@@ -26,7 +30,7 @@ const everything = rest.length === 0;
 let cluster: ThrowAwayCluster | undefined;
 let vitest: ChildProcess | undefined;
 let interrupted = false;
-const folder = mkdtempSync(join(tmpdir(), 'quartzhold-run-'));
+const folder = mkdtempSync(join(tmpdir(), `${throwAwayPrefix}${process.pid}-run-`));
 
 for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) {
   process.on(signal, () => {

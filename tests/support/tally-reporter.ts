@@ -26,10 +26,14 @@ export default class TallyReporter implements Reporter {
         else failedHere += 1;
       }
       tally.failed += failedHere;
-      // A file that does not load, or whose hooks fail, fails without any of its tests failing.
-      if (!module.ok() && failedHere === 0)
-        tally.troubles.push(`${module.relativeModuleId} failed`);
-      else if (module.errors().length) tally.troubles.push(`${module.relativeModuleId} has errors`);
+      // Files that do not load and hooks that fail are no tests, but they are failures.
+      for (const suite of module.children.allSuites()) {
+        if (suite.errors().length) {
+          tally.troubles.push(`${module.relativeModuleId} > ${suite.fullName}`);
+        }
+      }
+      if (module.errors().length) tally.troubles.push(module.relativeModuleId);
+      else if (!module.ok() && failedHere === 0) tally.troubles.push(module.relativeModuleId);
     }
     for (const error of unhandled) tally.troubles.push(`unhandled: ${error.message}`);
     if (reason === 'interrupted') tally.troubles.push('the run was interrupted');

@@ -12,7 +12,8 @@ export interface ThrowAwayCluster extends Cluster {
   remove: () => Promise<void>;
 }
 
-const prefix = 'quartzhold-test-';
+/** Of temporary folders, followed by the process id of their maker, so that a later run can sweep them. */
+export const throwAwayPrefix = 'quartzhold-test-';
 
 /** A cluster in a temporary folder, for one run of the suites. */
 export async function startThrowAwayCluster(): Promise<ThrowAwayCluster> {
@@ -20,7 +21,7 @@ export async function startThrowAwayCluster(): Promise<ThrowAwayCluster> {
   // Its package brings the account, so it comes first.
   await postgresPrograms();
   const account = await serverAccount();
-  const home = mkdtempSync(join(tmpdir(), `${prefix}${process.pid}-`));
+  const home = mkdtempSync(join(tmpdir(), `${throwAwayPrefix}${process.pid}-`));
   if (account.uid !== undefined) chownSync(home, account.uid, account.gid!);
   const removeHome = () => rmSync(home, { recursive: true, force: true, maxRetries: 5 });
   try {
@@ -40,8 +41,8 @@ export async function startThrowAwayCluster(): Promise<ThrowAwayCluster> {
 /** A run ended by SIGKILL could not clean up; the next one does. */
 function sweepAfterTheKilled(): void {
   for (const name of readdirSync(tmpdir())) {
-    if (!name.startsWith(prefix)) continue;
-    const pid = Number(name.slice(prefix.length).split('-')[0]);
+    if (!name.startsWith(throwAwayPrefix)) continue;
+    const pid = Number(name.slice(throwAwayPrefix.length).split('-')[0]);
     if (!pid || bornAt(pid) !== undefined) continue;
     const home = join(tmpdir(), name);
     try {
