@@ -6,7 +6,7 @@ import {
   Model,
   type Sequelize,
 } from 'sequelize';
-import { type AnalysisCriteria } from '../services/analysis/criteria';
+import { type AnalysisCriteria } from '@shared/analysis/criteria';
 
 /** What the computation made of one set of readings under one set of criteria. */
 export class Analysis extends Model<InferAttributes<Analysis>, InferCreationAttributes<Analysis>> {

@@ -1,30 +1,12 @@
 import {
   type Receiver as ReceiverView,
-  type ReceiverCriteria,
   type ReceiverWithRevisions,
 } from '@shared/contract/receivers';
-import { receiverAllowance, type Receiver as RadioReceiver } from '@shared/radio';
+import { radioReceiver } from '@shared/analysis/drift';
+import { receiverAllowance } from '@shared/radio/allowance';
 import { type Receiver } from '../models';
 import { revisionForReceipt } from '../policies/revisions';
 import { newestFirst, presentReceiverRevision, todayIso } from './revision';
-
-/** The contract's receiver as the computation takes it. */
-export function radioReceiver(criteria: ReceiverCriteria): RadioReceiver {
-  return {
-    carrierHz: Number(criteria.carrierHz),
-    symbolRateHz: Number(criteria.symbolRateHz),
-    frontEndBandwidthHz: Number(criteria.frontEndBandwidthHz),
-    pulse:
-      criteria.pulse === 'rectangular'
-        ? { shape: 'rectangular' }
-        : { shape: 'root-raised-cosine', rollOff: criteria.rollOff ?? 0 },
-    shareOfSymbolRate: criteria.shareOfSymbolRate,
-    farEndTolerancePpm: criteria.farEndTolerancePpm,
-    greatestSpeedMps: criteria.greatestSpeedMps,
-    serviceLifeYears: criteria.serviceLifeYears,
-    allowedShareBeyond: criteria.allowedShareBeyond,
-  };
-}
 
 /** Expects `revisions` (with creator and approval) and `parts` loaded. */
 export function presentReceiver(receiver: Receiver): ReceiverView {

@@ -116,7 +116,7 @@ export const AnalysisResult = z.object({
     .nullable(),
   limits: z.object({ lowPpm: maybe, highPpm: maybe }),
   allowance: z.object({ lowPpm: finite, highPpm: finite, receiverName: z.string() }).nullable(),
-  beyond: z.object({ limits: BeyondCount, allowance: BeyondCount }),
+  beyond: z.object({ limits: BeyondCount, allowance: BeyondCount.nullable() }),
   shareBeyond: z.array(ShareMethod),
   guardBand: z.object({
     rule: DecisionRule,
