@@ -3,7 +3,7 @@ import { migrate } from '../database/migrate';
 import { checkoutFolder } from './checkout';
 import { runOrStop } from './command';
 import { openDatabase, isEmpty } from './database';
-import { startMailFake } from './parts';
+import { startMailFake } from '../mail/fake';
 import { choosePort } from './ports';
 import { type Running } from './running';
 import { say } from './say';

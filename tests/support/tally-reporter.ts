@@ -27,13 +27,12 @@ export default class TallyReporter implements Reporter {
       }
       tally.failed += failedHere;
       // Files that do not load and hooks that fail are no tests, but they are failures.
-      for (const suite of module.children.allSuites()) {
-        if (suite.errors().length) {
-          tally.troubles.push(`${module.relativeModuleId} > ${suite.fullName}`);
-        }
-      }
-      if (module.errors().length) tally.troubles.push(module.relativeModuleId);
-      else if (!module.ok() && failedHere === 0) tally.troubles.push(module.relativeModuleId);
+      const hooks = [...module.children.allSuites()]
+        .filter((suite) => suite.errors().length)
+        .map((suite) => `${module.relativeModuleId} > ${suite.fullName}`);
+      tally.troubles.push(...hooks);
+      const unexplained = !module.ok() && failedHere + hooks.length === 0;
+      if (module.errors().length || unexplained) tally.troubles.push(module.relativeModuleId);
     }
     for (const error of unhandled) tally.troubles.push(`unhandled: ${error.message}`);
     if (reason === 'interrupted') tally.troubles.push('the run was interrupted');
