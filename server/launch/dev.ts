@@ -38,7 +38,7 @@ try {
     log: 'console',
   });
   await waitForHealth(api);
-  greet(address, surroundings);
+  if (!running.ending) greet(address, surroundings);
 } catch (error) {
   if (!running.ending) {
     console.error(error instanceof LaunchError ? error.message : error);

@@ -27,7 +27,7 @@ try {
   });
   running.start({ title: 'web', arguments: server, env: { ...env, QUARTZHOLD_ROLE: 'web' }, log });
   await waitForHealth(address);
-  greet(surroundings.env.PUBLIC_URL ?? address, surroundings);
+  if (!running.ending) greet(surroundings.env.PUBLIC_URL ?? address, surroundings);
 } catch (error) {
   if (!running.ending) {
     console.error(error instanceof LaunchError ? error.message : error);
