@@ -26,8 +26,10 @@ function uniformShares(units: Float64Array, tolerance: number, limit: number): F
   const clear = limit - tolerance;
   const width = 2 * tolerance;
   for (let i = 0; i < units.length; i += 1) {
-    const u = units[i]!;
-    const over = Math.min(Math.max(u - clear, 0), width) + Math.min(Math.max(-u - clear, 0), width);
+    // Nearest to nominal first: most units of a lot are clear of both ramps.
+    const reach = Math.abs(units[i]!);
+    if (reach <= clear) continue;
+    const over = Math.min(reach - clear, width) + Math.max(0, Math.min(-reach - clear, width));
     shares[i] = over >= width ? 1 : over / width;
   }
   return shares;

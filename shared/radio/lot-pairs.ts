@@ -55,7 +55,10 @@ export function finiteOffsets(values: ArrayLike<number>, argument: string): Floa
   if (values.length === 0)
     throw new RadioError('too_few', argument, 'must hold at least one offset');
   const offsets = values instanceof Float64Array ? values : Float64Array.from(values);
-  for (let i = 0; i < offsets.length; i += 1) requireFinite(offsets[i]!, argument);
+  // A value less itself is 0, or NaN when it is not finite: one sum tells of all.
+  let check = 0;
+  for (let i = 0; i < offsets.length; i += 1) check += offsets[i]! - offsets[i]!;
+  requireFinite(check, argument);
   return offsets;
 }
 
