@@ -1,7 +1,7 @@
-import { type Express, type Request } from 'express';
+import { type CookieOptions, type Express, type Request, type Response } from 'express';
 import session from 'express-session';
 import passport from 'passport';
-import { type Config } from '../config';
+import { config as currentConfig, type Config } from '../config';
 import { Person } from '../models';
 import { sessionEnd, touchSession } from './session-clock';
 import { allowNewSession, SessionStore } from './session-store';
@@ -11,6 +11,14 @@ type Done = (error: unknown, user?: Express.User | false) => void;
 
 export function cookieName(config: Pick<Config, 'secureCookies'>): string {
   return config.secureCookies ? '__Host-quartzhold' : 'quartzhold';
+}
+
+function cookieOptions(config: Pick<Config, 'secureCookies'>): CookieOptions {
+  return { httpOnly: true, sameSite: 'lax', secure: config.secureCookies, path: '/' };
+}
+
+export function clearSessionCookie(response: Response): void {
+  response.clearCookie(cookieName(currentConfig()), cookieOptions(currentConfig()));
 }
 
 function startSession(request: Request, user: Express.User): string {
@@ -65,7 +73,7 @@ export function useSessions(app: Express, config: Config): void {
       resave: false,
       saveUninitialized: false,
       rolling: false,
-      cookie: { httpOnly: true, sameSite: 'lax', secure: config.secureCookies, path: '/' },
+      cookie: cookieOptions(config) as never,
     }),
     authenticator.initialize(),
     authenticator.session(),

@@ -18,8 +18,17 @@ export async function signInRequest(request: Request, response: Response): Promi
     );
   });
   if (!user) throw new WrongSignIn();
-  await new Promise<void>((resolve, reject) => {
+  await logIn(request, user);
+  return user;
+}
+
+/** The same person under a new session id, after proving who they are once more; the old id dies. */
+export function renewSession(request: Request): Promise<void> {
+  return logIn(request, request.user!);
+}
+
+function logIn(request: Request, user: Express.User): Promise<void> {
+  return new Promise((resolve, reject) => {
     request.logIn(user, (error: unknown) => (error ? reject(error as Error) : resolve()));
   });
-  return user;
 }

@@ -22,7 +22,7 @@ const brakes = {
   /** Mails that strangers can make us send. */
   resetAccount: { free: 3, firstMs: 60_000, greatestMs },
   resetAddress: { free: 20, firstMs: 10_000, greatestMs },
-  link: { free: 30, firstMs: 2_000, greatestMs },
+  link: { free: 60, firstMs: 2_000, greatestMs },
 } satisfies Record<string, Brake>;
 export type BrakeName = keyof typeof brakes;
 
