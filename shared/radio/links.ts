@@ -1,4 +1,4 @@
-import { sharesBeyond } from './beyond-shares';
+import { type ShareWriter, sharesBeyond } from './beyond-shares';
 import { requireFinite, requireNonNegative } from './errors';
 import { type FarEnd, type LinkDoppler } from './far-end';
 import { type ShareBoundMethod, chernoffUpper, shareUpperBound } from './share-bound';
@@ -64,6 +64,35 @@ function boundOf(
   return { share, upperBound: upper, method };
 }
 
+/** Units whose shares are held at a time; two such stretches stay in the nearest cache. */
+const STRETCH = 1024;
+
+/** Sums over all units of the share beyond the first limit, between the two, and beyond the second. */
+function sumShares(units: number, writeFirst: ShareWriter, writeSecond: ShareWriter) {
+  const first = new Float64Array(STRETCH);
+  const second = new Float64Array(STRETCH);
+  const left: Sums = { sum: 0, squares: 0 };
+  const between: Sums = { sum: 0, squares: 0 };
+  const outside: Sums = { sum: 0, squares: 0 };
+  for (let start = 0; start < units; start += STRETCH) {
+    const end = Math.min(units, start + STRETCH);
+    writeFirst(start, end, first);
+    writeSecond(start, end, second);
+    for (let i = 0; i < end - start; i += 1) {
+      const p = first[i]!;
+      const q = Math.min(p, second[i]!);
+      const r = p - q;
+      left.sum += p;
+      left.squares += p * p;
+      between.sum += r;
+      between.squares += r * r;
+      outside.sum += q;
+      outside.squares += q * q;
+    }
+  }
+  return { left, between, outside };
+}
+
 /**
  * Share of links, each made of a unit of this lot and a far end, in each region of offset.
  *
@@ -99,23 +128,12 @@ export function linkShares(question: LinkQuestion): LinkShares {
     question.farEnd,
     doppler.model === 'uniform' ? dopplerPpm : 0,
   );
-  const first = beyond(symbolRate - worstCasePpm);
-  const second = beyond(frontEnd - worstCasePpm);
-  const units = first.length;
-  const left: Sums = { sum: 0, squares: 0 };
-  const between: Sums = { sum: 0, squares: 0 };
-  const outside: Sums = { sum: 0, squares: 0 };
-  for (let i = 0; i < units; i += 1) {
-    const p = first[i]!;
-    const q = Math.min(p, second[i]!);
-    const r = p - q;
-    left.sum += p;
-    left.squares += p * p;
-    between.sum += r;
-    between.squares += r * r;
-    outside.sum += q;
-    outside.squares += q * q;
-  }
+  const { left, between, outside } = sumShares(
+    beyond.units,
+    beyond.writer(symbolRate - worstCasePpm),
+    beyond.writer(frontEnd - worstCasePpm),
+  );
+  const { units } = beyond;
   const farEnds = question.farEnd.model === 'measured' ? question.farEnd.offsetsPpm.length : null;
   const beyondSymbolRate = boundOf(left, units, farEnds, question);
   return {

@@ -71,25 +71,21 @@ export function sortedOffsets(values: ArrayLike<number>, argument: string): Floa
 }
 
 /**
- * How many of a sorted lot's far ends put each of a sorted lot's units beyond the limit.
- * Both pointers only move up, so a million by a million takes milliseconds.
- * @param visit receives the unit's index and its count of far ends with |a - b| > limit
+ * Counts the far ends of a sorted lot with |a - b| > limit, for units a that never fall from call to
+ * call. Both pointers only move up, so a million by a million takes milliseconds.
  */
-export function countBeyondPerUnit(
-  unitsSorted: Float64Array,
+export function makeBeyondCounter(
   farEndsSorted: Float64Array,
   limitPpm: number,
-  visit: (unit: number, beyond: number) => void,
-): void {
+): (unitPpm: number) => number {
   const last = farEndsSorted.length;
   let below = 0; // far ends with a - b > limit
   let notAbove = 0; // far ends with b - a <= limit
-  for (let i = 0; i < unitsSorted.length; i += 1) {
-    const a = unitsSorted[i]!;
+  return (a) => {
     while (below < last && a - farEndsSorted[below]! > limitPpm) below += 1;
     while (notAbove < last && !(farEndsSorted[notAbove]! - a > limitPpm)) notAbove += 1;
-    visit(i, limitPpm < 0 ? last : below + last - notAbove);
-  }
+    return below + last - notAbove;
+  };
 }
 
 /**
@@ -109,7 +105,8 @@ export function measuredPairs(
   const a = sortedOffsets(unitsPpm, 'unitsPpm');
   const b = sortedOffsets(farEndsPpm, 'farEndsPpm');
   let pairsBeyond = 0;
-  countBeyondPerUnit(a, b, limitPpm, (_unit, beyond) => (pairsBeyond += beyond));
+  const countBeyond = makeBeyondCounter(b, limitPpm);
+  for (const unit of a) pairsBeyond += countBeyond(unit);
   const ofA = momentsOf(a);
   const ofB = momentsOf(b);
   const pairs = a.length * b.length;
