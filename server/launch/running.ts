@@ -16,6 +16,7 @@ export interface ProgramToStart {
 
 // The server gives itself 25 seconds to end what it has begun.
 const graceMs = 30_000;
+const echoMs = 1500;
 const linesKept = 25;
 const logFolder = join(localFolder, 'logs');
 
@@ -23,14 +24,15 @@ const logFolder = join(localFolder, 'logs');
 export class Running {
   private readonly stops: (() => Promise<void>)[] = [];
   private stopping: Promise<void> | undefined;
+  private stoppingSince = 0;
   private acquiring: Promise<unknown> = Promise.resolve();
 
   constructor() {
     const parent = process.ppid;
     for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) {
       process.on(signal, () => {
-        // A second Ctrl-C is from somebody who will not wait.
-        if (this.stopping) process.exit(130);
+        // npm passes on the Ctrl-C that the terminal has already sent; a later one is from somebody who will not wait.
+        if (this.stopping && Date.now() - this.stoppingSince > echoMs) process.exit(130);
         void this.end(0, 'Stopping ...');
       });
     }
@@ -78,6 +80,7 @@ export class Running {
   async end(code: number, words?: string): Promise<never> {
     if (!this.stopping) {
       if (words) say(words);
+      this.stoppingSince = Date.now();
       this.stopping = this.stopAll();
     }
     await this.stopping;
