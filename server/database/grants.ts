@@ -5,6 +5,8 @@ const appendOnly = [
   'history_verifications',
   'history_personal',
   'signatures',
+  'hold_messages',
+  'attachments',
   'upload_chunks',
   'readings',
   'refused_rows',

@@ -83,7 +83,7 @@ function factTable(facts: MailContent['facts']): string {
   const body = facts
     .map(
       ([label, value]) =>
-        `<tr><th scope="row" align="left" valign="top" style="${small};font-weight:400;padding:5px 18px 5px 0;white-space:nowrap;border-top:1px solid ${colours.line}">${escapeHtml(label)}</th>` +
+        `<tr><th scope="row" align="left" valign="top" style="${small};font-weight:400;width:1%;padding:5px 18px 5px 0;white-space:nowrap;border-top:1px solid ${colours.line}">${escapeHtml(label)}</th>` +
         `<td valign="top" style="${cell};padding:4px 0;border-top:1px solid ${colours.line}">${lines(value)}</td></tr>`,
     )
     .join('');
