@@ -1,0 +1,29 @@
+import * as contract from '@shared/contract/dispositions';
+import { route } from '../http/route';
+import {
+  readContainment,
+  readDisposition,
+  readDispositions,
+} from '../services/dispositions/read-dispositions';
+import { countersign, refuseSecond } from '../services/dispositions/second-signature';
+import { signDisposition } from '../services/dispositions/sign-disposition';
+import { sortLot } from '../services/dispositions/sort-lot';
+
+export const dispositionRoutes = [
+  route(contract.listDispositions, ({ params }) => readDispositions(params.id)),
+  route(contract.signDisposition, async ({ actor, params, body }) =>
+    readDisposition(await signDisposition(actor, params.id, body)),
+  ),
+  route(contract.countersignDisposition, async ({ actor, params, body }) => {
+    await countersign(actor, params.id, body);
+    return readDisposition(params.id);
+  }),
+  route(contract.refuseDisposition, async ({ actor, params, body }) => {
+    await refuseSecond(actor, params.id, body.reason);
+    return readDisposition(params.id);
+  }),
+  route(contract.proposeContainment, ({ params }) => readContainment(params.id)),
+  route(contract.sortLot, async ({ actor, params, body }) => ({
+    subLotId: await sortLot(actor, params.id, body),
+  })),
+];
