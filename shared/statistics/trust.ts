@@ -1,7 +1,8 @@
-import type { EsdTest } from './outliers';
+import { countOf } from '../format/counts';
+import { requireWhole } from './checks';
 import type { ClusterWarning } from './clusters';
 import type { NormalityTest } from './normality';
-import { requireWhole } from './checks';
+import type { EsdTest } from './outliers';
 
 /** Which figures of the share beyond limits to rely on. */
 export type TrustedMethod = 'observed' | 'normal';
@@ -63,7 +64,7 @@ export function trustworthyMethod(evidence: TrustEvidence): Trust {
     method: 'normal',
     reasons: ['looks_normal'],
     sentence:
-      `Nothing speaks against a normal lot in ${n} units: rely on the normal-theory estimate and its bound, ` +
+      `Nothing speaks against a normal lot in ${countOf(n, 'unit')}: rely on the normal-theory estimate and its bound, ` +
       'which see further into the tail than the count.',
   };
 }
@@ -79,12 +80,12 @@ function countSentence(reasons: TrustReason[], { n, outliers }: TrustEvidence): 
       return `${units} too far out for a normal lot: ${rely}; the normal-theory figures do not hold here.`;
     }
     case 'not_normal':
-      return `The ${n} units do not follow a normal distribution: ${rely}; the normal-theory figures do not hold here.`;
+      return `The ${countOf(n, 'unit')} do not follow a normal distribution: ${rely}; the normal-theory figures do not hold here.`;
     case 'too_few_to_check':
-      return `With ${n} ${n === 1 ? 'unit' : 'units'} a normal lot cannot be told from another: ${rely}, and measure more units for a closer one.`;
+      return `With ${countOf(n, 'unit')} a normal lot cannot be told from another: ${rely}, and measure more units for a closer one.`;
     case 'no_spread':
       return `The readings show no spread to build on: ${rely}, and check the resolution of the counter.`;
     default:
-      return `With ${n} units the count is precise by itself: ${rely}.`;
+      return `With ${countOf(n, 'unit')} the count is precise by itself: ${rely}.`;
   }
 }

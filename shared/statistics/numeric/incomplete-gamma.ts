@@ -15,7 +15,8 @@ export interface GammaTails {
  */
 export function gammaTails(a: number, x: number): GammaTails {
   if (x <= 0) return { lower: 0, upper: 1 };
-  if (x === Infinity) return { lower: 1, upper: 0 };
+  // Beyond this the ratio x/a overflows; the upper tail vanished long before.
+  if (!(x < 1e300 * Math.min(1, a))) return { lower: 1, upper: 0 };
   // x^a e^-x / Gamma(a) = sqrt(a/(2 pi)) exp(-a (u - ln(1+u)) - rest(a)), u = (x - a)/a
   const factor =
     Math.sqrt(a / (2 * Math.PI)) * Math.exp(-a * logExcess((x - a) / a, x / a) - stirlingRest(a));

@@ -1,5 +1,5 @@
 import { sampleKurtosis, sampleSkewness, standardDeviation } from 'simple-statistics';
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, vi } from 'vitest';
 import {
   andersonDarling,
   assessLimits,
@@ -18,6 +18,9 @@ import {
   normalQuantile,
   normalUpperTail,
 } from '@shared/statistics/distributions/normal';
+
+// A busy machine may take its time; nothing here is about speed.
+vi.setConfig({ testTimeout: 60_000 });
 
 /** Repeatable uniform numbers (a linear congruence; good enough to shuffle shapes). */
 function source(seed: number): () => number {
@@ -44,14 +47,14 @@ describe('which figures to trust', () => {
   it('the count for a handful of units', () => {
     const { trust } = assessLimits(describeOffsets(normalLot(12, 5)), limits);
     expect(trust).toMatchObject({ method: 'observed', reasons: ['too_few_to_check'] });
-    expect(trust.sentence).toContain('12 units');
+    expect(trust.sentence).toMatch(/12\sunits /);
   });
 
   it('the count for a single unit, without normal figures', () => {
     const assessment = assessLimits(describeOffsets(Float64Array.of(5)), limits);
     expect(assessment).toMatchObject({ normal: null, capability: null });
     expect(assessment.observed).toMatchObject({ count: 1, share: 1, upperBound: 1 });
-    expect(assessment.trust.sentence).toContain('1 unit ');
+    expect(assessment.trust.sentence).toMatch(/1\sunit /);
   });
 
   it('the count when all units agree', () => {
@@ -79,8 +82,11 @@ describe('which figures to trust', () => {
   });
 
   it('the count for a hundred thousand units with some beyond', () => {
-    const { trust } = assessLimits(describeOffsets(normalLot(100_000, 8)), { low: -3, high: 3 });
-    expect(trust.method).toBe('observed');
+    // Evenly spaced quantiles: as normal as a lot can be.
+    const even = Float64Array.from({ length: 100_000 }, (_, i) => normalQuantile((i + 0.5) / 1e5));
+    const { trust } = assessLimits(describeOffsets(even), { low: -3, high: 3 });
+    expect(trust).toMatchObject({ method: 'observed', reasons: ['count_decides'] });
+    expect(trust.sentence).toMatch(/100,000\sunits/);
   });
 });
 
@@ -115,16 +121,18 @@ describe('two clusters', () => {
 });
 
 describe('the upper bound for two limits', () => {
+  const LOTS = 150;
+
   it('holds in at least 95 of 100 lots wherever the mean lies', () => {
     for (const mean of [0, 0.8, 2]) {
       const truth = normalCdf(-2.5 - mean) + normalUpperTail(2.5 - mean);
       let held = 0;
-      for (let seed = 1; seed <= 400; seed += 1) {
+      for (let seed = 1; seed <= LOTS; seed += 1) {
         const summary = moments(normalLot(25, seed * 104729, mean));
         if (shareUpperBound(summary, { low: -2.5, high: 2.5 }, 0.95) >= truth) held += 1;
       }
-      // 95 % less three standard errors of 400 trials
-      expect(held / 400).toBeGreaterThan(0.95 - 3 * Math.sqrt((0.95 * 0.05) / 400));
+      // 95 % less three standard errors of so many trials
+      expect(held / LOTS).toBeGreaterThan(0.95 - 3 * Math.sqrt((0.95 * 0.05) / LOTS));
     }
   });
 });

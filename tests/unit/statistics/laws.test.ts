@@ -1,5 +1,5 @@
 import fc from 'fast-check';
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, vi } from 'vitest';
 import {
   andersonDarling,
   assessLimits,
@@ -21,6 +21,9 @@ import {
   twoClusters,
   unbiasedShare,
 } from '@shared/statistics';
+
+// A busy machine may take its time; nothing here is about speed.
+vi.setConfig({ testTimeout: 60_000 });
 
 /** Offsets on a grid of 0.001 ppm, as a counter gives them, at least two of them different. */
 const offsets = (least = 3, most = 80) =>
