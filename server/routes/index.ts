@@ -12,6 +12,7 @@ import { preferenceRoutes } from './preferences';
 import { receiverRoutes } from './receivers';
 import { sessionRoutes } from './session';
 import { supplierRoutes } from './suppliers';
+import { uploadRoutes } from './uploads';
 
 /** Every route of the product. tests/api proves that each endpoint of the contract is answered by exactly one. */
 export const routes: Route[] = [
@@ -29,4 +30,5 @@ export const routes: Route[] = [
   ...receiverRoutes,
   ...sessionRoutes,
   ...supplierRoutes,
+  ...uploadRoutes,
 ];

@@ -27,7 +27,7 @@ export async function findLink(
   address: string,
   transaction?: Transaction,
 ): Promise<LiveLink> {
-  if (!transaction) await countAttempt([{ brake: 'link', subject: address }]);
+  if (!transaction) await countAttempt([{ brake: 'link', subject: [address] }]);
   const link = await PersonLink.findOne({
     where: { tokenHash: sha256Hex(token), usedAt: null, expiresAt: { [Op.gt]: new Date() } },
     ...(transaction ? { transaction, lock: transaction.LOCK.UPDATE } : {}),

@@ -1,7 +1,7 @@
 import { setTimeout as wait } from 'node:timers/promises';
 import { act } from '../../history/act';
 import { system } from '../../http/actor';
-import { countAttempt } from '../sign-in/attempts';
+import { countAttempt, resetCounters } from '../sign-in/attempts';
 import { personByEmail } from '../sign-in/sign-in';
 import { mailLink } from './mail-link';
 
@@ -11,10 +11,7 @@ const answerAfterMs = 300;
 /** Act `password.reset_request`: mails a link if the address is somebody's; tells the asker nothing either way. */
 export async function requestReset(email: string, address: string): Promise<void> {
   const answer = wait(answerAfterMs);
-  await countAttempt([
-    { brake: 'resetAccount', subject: email.toLowerCase() },
-    { brake: 'resetAddress', subject: address },
-  ]);
+  await countAttempt(resetCounters(email, address));
   const person = await personByEmail(email);
   const known = person !== null && person.state !== 'disabled';
   await act(system, 'password.reset_request', async (transaction) => {

@@ -6,7 +6,7 @@ import { system, type Actor } from '../../http/actor';
 import { Conflict, InvalidInput } from '../../http/errors';
 import { Person } from '../../models';
 import { deleteSessions } from '../sessions/end-session';
-import { forgiveAttempt } from '../sign-in/attempts';
+import { forgiveAccount } from '../sign-in/attempts';
 import { tellPasswordChanged } from '../sign-in/change-password';
 import { newPasswordHash } from '../sign-in/new-password';
 import { findLink, type LiveLink } from './find-link';
@@ -62,7 +62,7 @@ async function setPassword(token: string, use: LinkUse, address: string, known: 
     };
   });
   // The owner of the mailbox has proved who they are: guesses of others no longer hold them up.
-  await forgiveAttempt([{ brake: 'account', subject: known.email.toLowerCase() }]);
+  await forgiveAccount(known.email);
 }
 
 function self(person: Person): Actor {

@@ -28,20 +28,34 @@ export type BrakeName = keyof typeof brakes;
 
 export interface Counter {
   brake: BrakeName;
-  /** Hashed before it is kept: addresses that strangers typed are nobody's to read. */
-  subject: string;
+  /** Hashed before they are kept: addresses that strangers typed are nobody's to read. */
+  subject: string[];
+}
+
+function hashed(text: string): string {
+  return createHash('sha256').update(text).digest('hex').slice(0, 32);
 }
 
 export function keyOf({ brake, subject }: Counter): string {
-  return `${brake}:${createHash('sha256').update(subject).digest('hex').slice(0, 40)}`;
+  return [brake, ...subject.map(hashed)].join(':');
+}
+
+function accountOf(email: string): string {
+  return email.toLowerCase();
 }
 
 export function signInCounters(email: string, address: string): Counter[] {
-  const account = email.toLowerCase();
   return [
-    { brake: 'account', subject: account },
-    { brake: 'address', subject: address },
-    { brake: 'pair', subject: `${account}\n${address}` },
+    { brake: 'account', subject: [accountOf(email)] },
+    { brake: 'address', subject: [address] },
+    { brake: 'pair', subject: [accountOf(email), address] },
+  ];
+}
+
+export function resetCounters(email: string, address: string): Counter[] {
+  return [
+    { brake: 'resetAccount', subject: [accountOf(email)] },
+    { brake: 'resetAddress', subject: [address] },
   ];
 }
 
@@ -107,11 +121,25 @@ export async function forgiveAttempt(counters: Counter[]): Promise<void> {
   );
 }
 
+/** Ends every wait on an account, from wherever the tries came: an administrator's help, or a proved mailbox. */
+export async function forgiveAccount(email: string): Promise<void> {
+  const account = accountOf(email);
+  await database().sequelize.query(
+    'DELETE FROM rate_limits WHERE key = :account OR key LIKE :pairs',
+    {
+      replacements: {
+        account: keyOf({ brake: 'account', subject: [account] }),
+        pairs: `${keyOf({ brake: 'pair', subject: [account] })}:%`,
+      },
+    },
+  );
+}
+
 /** When the account-wide wait ends, if one runs: for administrators. */
 export async function accountDelays(emails: string[]): Promise<Map<string, Date>> {
   if (emails.length === 0) return new Map();
   const byKey = new Map(
-    emails.map((email) => [keyOf({ brake: 'account', subject: email.toLowerCase() }), email]),
+    emails.map((email) => [keyOf({ brake: 'account', subject: [accountOf(email)] }), email]),
   );
   const rows = await database().sequelize.query<{ key: string; points: number; expire: string }>(
     'SELECT key, points, expire FROM rate_limits WHERE key IN (:keys)',
