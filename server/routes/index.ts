@@ -1,4 +1,6 @@
 import { type Route } from '../http/route';
+import { workRoutes } from './work';
+import { historyRoutes } from './history';
 import { analysisRoutes } from './analysis';
 import { benchRoutes } from './benches';
 import { dispositionRoutes } from './dispositions';
@@ -17,6 +19,8 @@ import { uploadRoutes } from './uploads';
 /** Every route of the product. tests/api proves that each endpoint of the contract is answered by exactly one. */
 export const routes: Route[] = [
   // One line a resource, by name.
+  ...workRoutes,
+  ...historyRoutes,
   ...analysisRoutes,
   ...benchRoutes,
   ...dispositionRoutes,

@@ -1,5 +1,6 @@
 import * as contract from '@shared/contract/lots';
 import { route } from '../http/route';
+import { writeLotsCsv } from '../services/lots/export-lots';
 import { changeLot } from '../services/lots/change-lot';
 import { readLot, readLots } from '../services/lots/read-lot';
 import { registerLot } from '../services/lots/register-lot';
@@ -7,6 +8,7 @@ import { rejudgeLot } from '../services/lots/rejudge-lot';
 
 export const lotRoutes = [
   route(contract.listLots, ({ actor, query }) => readLots(actor, query)),
+  route(contract.exportLots, ({ query, response }) => writeLotsCsv(query, response)),
   route(contract.registerLot, async ({ actor, body }) =>
     readLot(actor, await registerLot(actor, body)),
   ),
