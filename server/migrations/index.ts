@@ -4,6 +4,7 @@ import { lotsAndReadings } from './003-lots-and-readings';
 import { decisions } from './004-decisions';
 import { holdsAndMail } from './005-holds-and-mail';
 import { history } from './006-history';
+import { uploadHeadings } from './010-upload-headings';
 import { holdRecords } from './020-hold-records';
 import { type Migration } from './migration';
 
@@ -15,5 +16,6 @@ export const migrations: Migration[] = [
   decisions,
   holdsAndMail,
   history,
+  uploadHeadings,
   holdRecords,
 ];

@@ -28,6 +28,7 @@ export class Upload extends Model<InferAttributes<Upload>, InferCreationAttribut
   declare state: CreationOptional<'queued' | 'running' | 'done' | 'failed' | 'withdrawn'>;
   declare stage: CreationOptional<'waiting' | 'reading' | 'analysing' | 'finished'>;
   declare mapping: CreationOptional<Mapping | null>;
+  declare headings: CreationOptional<string[] | null>;
   declare rememberMapping: CreationOptional<boolean>;
   declare rowsInFile: CreationOptional<number>;
   declare rowsTaken: CreationOptional<number>;
@@ -71,6 +72,7 @@ export class Upload extends Model<InferAttributes<Upload>, InferCreationAttribut
         state: { type: DataTypes.TEXT, allowNull: true },
         stage: { type: DataTypes.TEXT, allowNull: true },
         mapping: DataTypes.JSONB,
+        headings: DataTypes.JSONB,
         rememberMapping: { type: DataTypes.BOOLEAN, allowNull: true },
         rowsInFile: { type: DataTypes.INTEGER, allowNull: true },
         rowsTaken: { type: DataTypes.INTEGER, allowNull: true },
