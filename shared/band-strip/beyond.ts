@@ -114,7 +114,7 @@ function stretchesOf(side: Side, scale: Scale, frame: Frame): Stretch[] {
     });
   }
   if (own.hasFarUnits) {
-    const laneStart = scaleEndX + outward * (frame.dotPitch + frame.lane * 0.2);
+    const laneStart = scaleEndX + outward * (frame.dotPitch + frame.lane * 0.5);
     const laneEnd = scaleEndX + outward * (frame.lane + frame.endPad - frame.dotRadius);
     if (own.allowanceOffScale) {
       const bracketX = offScaleBracketX(side, scale, frame);

@@ -21,7 +21,7 @@ export interface Frame {
   labelY: number | null;
 }
 
-export const frames: Record<BandStripSize, Frame> = {
+const frames: Record<BandStripSize, Frame> = {
   row: {
     height: 36,
     axisY: 30,
@@ -50,10 +50,16 @@ export const frames: Record<BandStripSize, Frame> = {
     dotRadius: 2.4,
     dotPitch: 6.5,
     stem: 13,
-    lane: 56,
+    lane: 96,
     overflowRoom: 48,
     minBar: 5,
     fontSize: 12,
     labelY: 79,
   },
 };
+
+/** On a narrow page the ends are kept shorter, so that the lot itself keeps its room. */
+export function frameFor(size: BandStripSize, width: number): Frame {
+  const frame = frames[size];
+  return size === 'page' && width < 640 ? { ...frame, endPad: 24, lane: 34 } : frame;
+}

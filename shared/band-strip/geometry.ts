@@ -1,6 +1,6 @@
 import { layoutBars } from './bars';
 import { layoutBeyond, offScaleBracketX } from './beyond';
-import { frames, type Frame } from './frame';
+import { frameFor, type Frame } from './frame';
 import { scaleFor, type Scale } from './scale';
 import {
   type BandStripFeature,
@@ -11,6 +11,7 @@ import {
 } from './types';
 
 const sides: readonly Side[] = ['low', 'high'];
+const captionRoom = 125;
 
 /**
  * Where everything on a band strip lies, in CSS pixels, for a place `width` wide. The browser, mails and reports all
@@ -21,7 +22,7 @@ export function bandStripGeometry(
   size: BandStripSize,
   width: number,
 ): BandStripGeometry {
-  const frame = frames[size];
+  const frame = frameFor(size, width);
   let scale = scaleFor(input, width, frame);
   let beyond = layoutBeyond(input, scale, frame);
   if (beyond.overflow.low + beyond.overflow.high > 0) {
@@ -33,6 +34,7 @@ export function bandStripGeometry(
     beyond = layoutBeyond(input, scale, frame);
   }
   const brackets = bracketsOf(scale, frame);
+  const posts = postsOf(scale, frame);
   const isEmpty = input.unitsCount === 0;
   const meanX =
     isEmpty || input.meanPpm === null
@@ -50,7 +52,7 @@ export function bandStripGeometry(
       ),
     zeroX: scale.lowPpm <= 0 && scale.highPpm >= 0 ? scale.xOf(0) : null,
     brackets,
-    posts: postsOf(scale, frame),
+    posts,
     guards: guardsOf(input, scale, frame),
     bars: isEmpty ? [] : layoutBars(input, scale, frame),
     meanX,
@@ -64,9 +66,9 @@ export function bandStripGeometry(
         x: side === 'low' ? 1 : width - 1,
         y: frame.axisY - frame.stem,
       })),
-    labels: frame.labelY === null ? [] : labelsOf(scale, frame, brackets, width),
-    captionX: captionX(scale, frame, brackets),
-    features: featuresOf(input, scale, brackets, beyond.marks, meanX),
+    labels: frame.labelY === null ? [] : labelsOf(scale, frame, brackets, beyond.marks, width),
+    captionX: captionX(scale, frame, brackets, beyond.marks),
+    features: featuresOf(input, brackets, beyond.marks, posts, meanX),
     isEmpty,
   };
 }
@@ -130,17 +132,22 @@ function guardsOf(input: BandStripInput, scale: Scale, frame: Frame): BandStripG
   return guards;
 }
 
-/** Limits first, then the allowance, then the nominal value: what is told first keeps its place when two would overlap. */
+/** Limits first, then the farthest unit past a break, then the allowance, then the nominal value: what is told first keeps its place when two would overlap. */
 function labelsOf(
   scale: Scale,
   frame: Frame,
   brackets: BandStripGeometry['brackets'],
+  marks: BandStripGeometry['marks'],
   width: number,
 ): BandStripGeometry['labels'] {
   const wanted: { ppm: number; x: number }[] = [];
   for (const side of sides) {
     const { limitPpm } = scale.sides[side];
     if (limitPpm !== null) wanted.push({ ppm: limitPpm, x: scale.xOf(limitPpm) });
+  }
+  for (const side of sides) {
+    const far = marks.filter((mark) => mark.offScale && mark.side === side).at(-1);
+    if (far) wanted.push({ ppm: far.ppm, x: far.x });
   }
   for (const { ppm, x } of brackets) wanted.push({ ppm, x });
   if (scale.lowPpm <= 0 && scale.highPpm >= 0) wanted.push({ ppm: 0, x: scale.xOf(0) });
@@ -166,24 +173,29 @@ function captionX(
   scale: Scale,
   frame: Frame,
   brackets: BandStripGeometry['brackets'],
+  marks: BandStripGeometry['marks'],
 ): number | null {
   const right = brackets.find(({ side }) => side === 'high');
   if (frame.labelY === null || right === undefined || right.offScale) return null;
   const { limitPpm } = scale.sides.high;
   const innerX = limitPpm === null ? scale.x2 : scale.xOf(limitPpm);
-  return right.x - innerX > 150 ? right.x - frame.lip - 3 : null;
+  const from = Math.max(innerX, right.x - captionRoom);
+  const isTaken = marks.some(
+    (mark) => mark.x > from && mark.x < right.x && mark.y < frame.barTop + 16,
+  );
+  return right.x - innerX > captionRoom && !isTaken ? right.x - frame.lip - 3 : null;
 }
 
 function featuresOf(
   input: BandStripInput,
-  scale: Scale,
   brackets: BandStripGeometry['brackets'],
   marks: BandStripGeometry['marks'],
+  posts: BandStripGeometry['posts'],
   meanX: number | null,
 ): BandStripFeature[] {
   const features: BandStripFeature[] = [
     ...brackets.map(({ side, ppm, x }) => ({ kind: 'allowance' as const, side, ppm, x })),
-    ...postsOf(scale, frames.page).map(({ side, ppm, x }) => ({
+    ...posts.map(({ side, ppm, x }) => ({
       kind: 'limit' as const,
       side,
       ppm,

@@ -18,6 +18,8 @@ export type BandStripShape =
       text: string;
     };
 
+export type HatchStroke = Extract<BandStripShape, { kind: 'line' }>;
+
 export interface BandStripWords {
   allowance: string;
   empty: string;
@@ -193,14 +195,14 @@ function addTexts(
 }
 
 /** Strokes at 45 degrees, cut to the rectangle here, so that no medium needs a pattern or a clip. */
-function hatch(
+export function hatch(
   x1: number,
   x2: number,
   top: number,
   bottom: number,
   spacing: number,
-): BandStripShape[] {
-  const strokes: BandStripShape[] = [];
+): HatchStroke[] {
+  const strokes: HatchStroke[] = [];
   const height = bottom - top;
   for (let start = x1 - height + spacing; start < x2; start += spacing) {
     const fromX = Math.max(start, x1);

@@ -1,4 +1,4 @@
-import { shallowRef, watch } from 'vue';
+import { onMounted, shallowRef, watch } from 'vue';
 import { useMediaQuery } from '@vueuse/core';
 import { usePreferences } from '@/stores/preferences';
 
@@ -21,6 +21,8 @@ const names = [
 
 export type ChartColours = Record<(typeof names)[number], string>;
 
+export const chartFont = "'Source Sans 3', 'Segoe UI', Arial, sans-serif";
+
 /** Our tokens as plain values for charts, which cannot read CSS variables; follows the theme as it changes. */
 export function useChartTheme() {
   const preferences = usePreferences();
@@ -28,6 +30,10 @@ export function useChartTheme() {
   const isStill = useMediaQuery('(prefers-reduced-motion: reduce)');
   const colours = shallowRef(read());
   watch([() => preferences.theme, isDark], () => (colours.value = read()), { flush: 'post' });
+  // A canvas drawn before the typeface arrived keeps the fallback's letters until it is drawn again.
+  onMounted(
+    () => void document.fonts.load(`13px ${chartFont}`).then(() => (colours.value = read())),
+  );
   return { colours, isStill };
 }
 
@@ -38,11 +44,9 @@ function read(): ChartColours {
   ) as ChartColours;
 }
 
-export const chartFont = "'Source Sans 3', 'Segoe UI', Arial, sans-serif";
-
 /** Text, axes and tooltip of every chart. The tooltip is painted, since markup with inline styles is refused by our CSP. */
 export function baseOption(colours: ChartColours, isStill: boolean) {
-  const label = { color: colours.soft, fontFamily: chartFont, fontSize: 12.5 };
+  const label = { margin: 9, color: colours.soft, fontFamily: chartFont, fontSize: 12.5 };
   return {
     animation: !isStill,
     animationDuration: 120,
