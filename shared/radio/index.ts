@@ -1,6 +1,7 @@
 export { RadioError, type RadioErrorCode } from './errors';
 export { fractionalOffset, hzToPpm, offsetPpb, offsetPpm, offsetPpmText, ppmToHz } from './offset';
 export { makeOffsetPpm, type OffsetReader } from './offset-reader';
+export { makeReadingToPpm } from './reading';
 export {
   fromHzText,
   toHzText,
@@ -57,6 +58,7 @@ export {
 } from './receivers';
 export { type FarEnd, type LinkDoppler } from './far-end';
 export { linkShares, type LinkQuestion, type LinkShares, type RegionShare } from './links';
+export { linkLoss, type LinkLoss, type LinkLossQuestion, type LossAtShare } from './link-loss';
 export { shareUpperBound, type ShareBound, type ShareBoundMethod } from './share-bound';
 export {
   airInterfaces,

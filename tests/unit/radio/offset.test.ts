@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import {
   fromHzText,
   makeOffsetPpm,
+  makeReadingToPpm,
   offsetPpm,
   offsetPpmText,
   RadioError,
@@ -88,6 +89,8 @@ describe('offset in ppm of a text in hertz', () => {
     ['-10000000', 'not_positive'],
     ['0.000', 'not_positive'],
     ['NaN', 'not_a_decimal'],
+    ['1000000\u0130', 'not_a_decimal'],
+    ['\uff11\uff10', 'not_a_decimal'],
   ])('refuses "%s" in text and bytes', (text, code) => {
     const reader = makeOffsetPpm('10000000');
     const expectation = expect.objectContaining({ code, argument: 'frequencyHz' });
@@ -129,5 +132,19 @@ describe('units of a reading', () => {
         expect(offsetPpm(toHzText(String(ppm), 'ppm', '32768'), '32768')).toBe(ppm);
       }),
     );
+  });
+
+  it('a reading gives the same offset in whatever unit it was written', () => {
+    expect(makeReadingToPpm('Hz', '10000000')('10000000.126856699585915')).toBe(0.0126856699585915);
+    expect(makeReadingToPpm('MHz', '10000000')('10.000000126856699585915')).toBe(
+      0.0126856699585915,
+    );
+    expect(makeReadingToPpm('kHz', '32768')('32.7681')).toBe(offsetPpm('32768.1', '32768'));
+    expect(makeReadingToPpm('ppm', '32768')('-1.25')).toBe(-1.25);
+    expect(makeReadingToPpm('ppb', '32768')('12.5')).toBe(0.0125);
+    for (const unit of ['Hz', 'GHz', 'ppm', 'ppb'] as const) {
+      expect(() => makeReadingToPpm(unit, '32768')('1,25')).toThrow(RadioError);
+      expect(() => makeReadingToPpm(unit, '0')).toThrow(RadioError);
+    }
   });
 });
