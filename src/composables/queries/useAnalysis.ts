@@ -1,5 +1,5 @@
 import { computed, toValue, type MaybeRefOrGetter } from 'vue';
-import { keepPreviousData, useQuery } from '@tanstack/vue-query';
+import { useQuery } from '@tanstack/vue-query';
 import { listAnalyses, readAnalysis } from '@/api/analysis';
 import { lotKey } from './useLot';
 
@@ -12,7 +12,8 @@ export function useAnalysis(
     queryKey: computed(() => [...lotKey(toValue(lotId)), 'analysis', toValue(analysisId)]),
     queryFn: ({ signal }) => readAnalysis(toValue(lotId), toValue(analysisId) ?? undefined, signal),
     enabled: computed(() => toValue(analysisId) !== null),
-    placeholderData: keepPreviousData,
+    // Another version of the same lot may stay in view while the next one comes; another lot may not.
+    placeholderData: (before) => (before?.lotId === toValue(lotId) ? before : undefined),
     staleTime: 60_000,
   });
 }
