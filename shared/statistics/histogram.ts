@@ -69,12 +69,14 @@ export function histogram(sorted: Float64Array, options: HistogramOptions = {}):
   const to = Math.min(max, middle + (budget / 3) * width);
   const isNear = (mark: number) => mark > from - width && mark < to + width;
   const core = layEdges(from, to, marks.filter(isNear), width);
-  const outside = marks.filter((mark) => !isNear(mark) && mark > min && mark < max);
+  const lowest = Math.min(min, core[0]!);
+  const highest = Math.max(max, core[core.length - 1]!);
   const edges = ascendingUnique([
+    lowest,
     ...core,
-    ...outside,
-    ...(min < core[0]! ? [min] : []),
-    ...(max > core[core.length - 1]! ? [max] : []),
+    // The last core bin may reach past a limit that was too far off to be laid out for.
+    ...marks.filter((mark) => mark > lowest && mark < highest),
+    highest,
   ]);
   // A conforming value on the outermost edge needs a bin on the conforming side.
   if (highs.has(edges[0]!) && min === edges[0]) edges.unshift(min - width);
