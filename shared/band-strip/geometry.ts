@@ -132,7 +132,7 @@ function guardsOf(input: BandStripInput, scale: Scale, frame: Frame): BandStripG
   return guards;
 }
 
-/** Limits first, then the farthest unit past a break, then the allowance, then the nominal value: what is told first keeps its place when two would overlap. */
+/** Limits first, then the allowance, then the farthest unit past a break, then the nominal value: what is told first keeps its place when two would overlap. */
 function labelsOf(
   scale: Scale,
   frame: Frame,
@@ -145,11 +145,11 @@ function labelsOf(
     const { limitPpm } = scale.sides[side];
     if (limitPpm !== null) wanted.push({ ppm: limitPpm, x: scale.xOf(limitPpm) });
   }
+  for (const { ppm, x } of brackets) wanted.push({ ppm, x });
   for (const side of sides) {
     const far = marks.filter((mark) => mark.offScale && mark.side === side).at(-1);
     if (far) wanted.push({ ppm: far.ppm, x: far.x });
   }
-  for (const { ppm, x } of brackets) wanted.push({ ppm, x });
   if (scale.lowPpm <= 0 && scale.highPpm >= 0) wanted.push({ ppm: 0, x: scale.xOf(0) });
   const rightmost = wanted.reduce((x, label) => Math.max(x, label.x), -Infinity);
   const taken: { from: number; to: number }[] = [];
