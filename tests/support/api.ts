@@ -1,4 +1,7 @@
 import { randomBytes } from 'node:crypto';
+import { mkdtempSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { type Express } from 'express';
 import request from 'supertest';
 import { createApp } from '../../server/app';
@@ -57,6 +60,8 @@ export interface Api {
 }
 
 export function testConfig(databaseUrl: string, changes: Partial<Config> = {}): Config {
+  // Checkpoints of one database's history mean nothing for another's.
+  const outside = mkdtempSync(join(tmpdir(), 'quartzhold-checkpoints-'));
   const config = readConfig({
     NODE_ENV: 'test',
     DATABASE_URL: databaseUrl,
@@ -64,6 +69,8 @@ export function testConfig(databaseUrl: string, changes: Partial<Config> = {}): 
     PUBLIC_URL: 'http://quartzhold.test',
     SESSION_SECRET: randomBytes(32).toString('hex'),
     LOG_LEVEL: 'silent',
+    CHECKPOINT_KEY_FILE: join(outside, 'checkpoint.pem'),
+    CHECKPOINT_FOLDER: join(outside, 'checkpoints'),
   });
   return { ...config, ...changes };
 }
