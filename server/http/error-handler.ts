@@ -22,6 +22,7 @@ const notThere = new Set([
   '57P02', // crash_shutdown
   '57P03', // cannot_connect_now
   '53300', // too_many_connections
+  '3D000', // invalid_catalog_name: the server is there, our database is not
   '08000',
   '08003',
   '08006',

@@ -78,8 +78,10 @@ export async function countAttempt(counters: Counter[]): Promise<void> {
     for (const counter of sorted) {
       const key = keyOf(counter);
       const known = await lockCounter(transaction, key, now);
-      const waitMs = known.lastTryAt + waitAfter(counter.brake, known.points) - now;
-      if (waitMs > 0) {
+      const wait = waitAfter(counter.brake, known.points);
+      const waitMs = known.lastTryAt + wait - now;
+      // A parallel try may have been counted a moment after our own `now`: without a wait that means nothing.
+      if (wait > 0 && waitMs > 0) {
         const seconds = Math.ceil(waitMs / 1000);
         throw new TooMany(
           `Too many tries. Please wait ${seconds < 90 ? `${seconds} s` : `${Math.ceil(seconds / 60)} min`} and try again.`,
