@@ -1,3 +1,4 @@
+import { hash, type verify as realVerify } from '@node-rs/argon2';
 import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
 import { useConfig } from '../../server/config';
 import { isOutdated, passwordCost } from '../../server/services/sign-in/password';
@@ -7,10 +8,10 @@ import { asOperator, minutesPass } from '../support/outside';
 
 const verifications = vi.hoisted(() => ({ count: 0 }));
 vi.mock('@node-rs/argon2', async (original) => {
-  const real = await original<typeof import('@node-rs/argon2')>();
+  const real = await original<{ verify: typeof realVerify }>();
   return {
     ...real,
-    verify: (...given: Parameters<typeof real.verify>) => {
+    verify: (...given: Parameters<typeof realVerify>) => {
       verifications.count += 1;
       return real.verify(...given);
     },
@@ -206,7 +207,6 @@ describe('stored passwords', () => {
   });
 
   it('are made anew at sign-in when they were made with other parameters', async () => {
-    const { hash } = await import('@node-rs/argon2');
     const old = await hash(passphrase, {
       algorithm: 2,
       memoryCost: 2048,

@@ -70,7 +70,7 @@ async function checksumFailures(): Promise<Check> {
 async function worker(): Promise<Check> {
   const [row] = await rows<{ workers: string }>(
     `SELECT count(*) AS workers FROM pg_stat_activity
-     WHERE datname = current_database() AND application_name = 'quartzhold-worker'`,
+     WHERE datname = current_database() AND application_name = 'quartzhold-jobs'`,
   );
   const workers = Number(row?.workers ?? 0);
   return {
