@@ -4,6 +4,7 @@ import { database } from '../database/connection';
 import { log } from '../http/request-log';
 import { jobsChannel } from './boss';
 import { handlers } from './handlers';
+import { startClock } from './handlers/clock';
 import { takeUpLapsed } from './handlers/ingest';
 import { startMailSender } from './handlers/mail';
 import { listen } from './listen';
@@ -59,12 +60,14 @@ export async function startWorker(): Promise<{ stop(): Promise<void> }> {
   sweep();
   const timer = setInterval(sweep, lapsedEveryMs);
   const stopMailSender = startMailSender(report);
+  const stopClock = startClock(report);
   return {
     async stop() {
       clearInterval(timer);
       await listener.stop();
       await Promise.all([
         stopMailSender(),
+        stopClock(),
         boss.stop({ graceful: true, timeout: 15_000 }),
         sweeping,
       ]);

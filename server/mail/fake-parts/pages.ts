@@ -7,6 +7,8 @@ import { fakeModes, type MailFakeBehaviour } from './behaviour';
 import { type Letter } from './letters';
 
 const style = `
+  @font-face { font-family:'Source Sans 3'; src:url('/fonts/400'); font-weight:400; }
+  @font-face { font-family:'Source Sans 3'; src:url('/fonts/600'); font-weight:600; }
   :root { color-scheme: light dark; --paper:#fbf9f6; --sheet:#fff; --ink:#2c2729; --soft:#6d6467; --line:#dcd5cf; --edge:#8f8588; --accent:#5d4690; --on:#fff; --wait:#8f6200; }
   @media (prefers-color-scheme: dark) { :root { --paper:#1b181a; --sheet:#231f22; --ink:#eee8e4; --soft:#a79da0; --line:#423b3f; --edge:#7b7276; --accent:#bda7e8; --on:#1b181a; --wait:#e0b454; } }
   * { box-sizing: border-box; }
@@ -24,7 +26,7 @@ const style = `
   a { color:var(--accent); } :focus-visible { outline:2px solid var(--accent); outline-offset:2px; }
   table { width:100%; border-collapse:collapse; } .scroll { overflow-x:auto; }
   th { text-align:left; font-size:13px; font-weight:400; color:var(--soft); padding:4px 16px 4px 0; white-space:nowrap; }
-  td { padding:7px 16px 7px 0; border-top:1px solid var(--line); vertical-align:top; overflow-wrap:anywhere; } td.time { white-space:nowrap; }
+  td { padding:7px 16px 7px 0; border-top:1px solid var(--line); vertical-align:top; overflow-wrap:anywhere; } td.whole { white-space:nowrap; }
   iframe { width:100%; height:36rem; border:1px solid var(--line); border-radius:3px; background:#fff; }
   pre { white-space:pre-wrap; overflow-wrap:anywhere; margin:0; font:13px/1.5 ui-monospace,'DejaVu Sans Mono',Menlo,Consolas,monospace; }
   img { max-width:100%; background:#fff; border:1px solid var(--line); border-radius:3px; }
@@ -50,8 +52,8 @@ export function listPage(letters: Letter[], behaviour: MailFakeBehaviour): strin
   const rows = letters
     .map(
       (letter) =>
-        `<tr><td class="time">${escapeHtml(dateTime(letter.at, 'UTC', { seconds: true }))}</td>` +
-        `<td>${escapeHtml(letter.to.join(', '))}</td>` +
+        `<tr><td class="whole">${escapeHtml(dateTime(letter.at, 'UTC', { seconds: true }))}</td>` +
+        `<td class="whole">${escapeHtml(letter.to.join(', '))}</td>` +
         `<td><a href="/letters/${letter.number}">${escapeHtml(letter.subject || 'No subject')}</a></td></tr>`,
     )
     .join('');

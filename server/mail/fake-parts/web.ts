@@ -1,11 +1,13 @@
+import { readFileSync } from 'node:fs';
 import { createServer, type IncomingMessage, type Server, type ServerResponse } from 'node:http';
+import { createRequire } from 'node:module';
 import { type MailFakeBehaviour, readBehaviour, wellBehaved } from './behaviour';
 import { letterHtml, letterPage, listPage, missingPage } from './pages';
 import { type Letters } from './letters';
 import { type FakeSmtp } from './smtp';
 
 const pagePolicy =
-  "default-src 'none'; style-src 'unsafe-inline'; img-src 'self' data:; frame-src 'self'; form-action 'self'; base-uri 'self'; frame-ancestors 'self'";
+  "default-src 'none'; style-src 'unsafe-inline'; img-src 'self' data:; font-src 'self'; frame-src 'self'; form-action 'self'; base-uri 'self'; frame-ancestors 'self'";
 
 /** Pages to read what was sent, and the same as JSON under /api for tests. */
 export function fakeWeb(letters: Letters, smtp: FakeSmtp): Server {
@@ -44,6 +46,8 @@ export function fakeWeb(letters: Letters, smtp: FakeSmtp): Server {
       return send(response, 200, 'text/html', listPage(letters.all(), smtp.behaviour));
     if (pathname === '/api/letters') return json(response, letters.all());
     if (pathname === '/api/behaviour') return json(response, smtp.behaviour);
+    const weight = /^\/fonts\/(400|600)$/.exec(pathname)?.[1];
+    if (weight) return send(response, 200, 'font/woff2', readFileSync(fontFile(weight)));
     const [, number, part] = /^\/letters\/(\d+)(?:\/(.+))?$/.exec(pathname) ?? [];
     const letter = letters.find(Number(number));
     if (!letter) return send(response, 404, 'text/html', missingPage());
@@ -61,6 +65,12 @@ export function fakeWeb(letters: Letters, smtp: FakeSmtp): Server {
   }
 }
 
+function fontFile(weight: string): string {
+  return createRequire(import.meta.url).resolve(
+    `@fontsource/source-sans-3/files/source-sans-3-latin-${weight}-normal.woff2`,
+  );
+}
+
 function errorJson(message: string): string {
   return JSON.stringify({ error: { code: 'input.invalid', message } });
 }
@@ -76,7 +86,7 @@ function back(response: ServerResponse): void {
 function send(response: ServerResponse, status: number, type: string, body: string | Buffer): void {
   response
     .writeHead(status, {
-      'Content-Type': type.startsWith('image/') ? type : `${type}; charset=utf-8`,
+      'Content-Type': /^(image|font)\//.test(type) ? type : `${type}; charset=utf-8`,
       'Content-Security-Policy': pagePolicy,
       'X-Content-Type-Options': 'nosniff',
       'Cache-Control': 'no-store',

@@ -1,5 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { inTransaction } from '../../../server/database/connection';
+import { atMinute } from '../../../server/jobs/handlers/clock';
 import { handleDigest } from '../../../server/jobs/handlers/digest';
 import { startMailFake, type MailFake } from '../../../server/mail/fake';
 import { queueMail } from '../../../server/mail/outbox';
@@ -54,5 +55,22 @@ describe('the daily digest', () => {
     expect(await handleDigest(new Date(Date.now() + 24 * 3600 * 1000))).toBe(1);
     await sendDueMails();
     expect(fake.letters()[0]!.text).toContain('Four');
+  });
+
+  it('comes in the morning, and a worker that was down then makes up for it', async () => {
+    const { quality } = api.people;
+    const in3Days = (hour: number) => {
+      const day = new Date(Date.now() + 3 * 24 * 3600 * 1000);
+      day.setUTCHours(hour, 0, 0, 0);
+      return day;
+    };
+    const id = await queue(quality.id, 'Five');
+    const told = async () => (await Mail.findByPk(id))!.digestMailId !== null;
+    await atMinute(in3Days(5));
+    expect(await told()).toBe(false);
+    await atMinute(in3Days(13));
+    expect(await told()).toBe(false);
+    await atMinute(in3Days(11));
+    expect(await told()).toBe(true);
   });
 });
