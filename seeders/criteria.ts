@@ -93,7 +93,6 @@ const parts: Record<string, PartSeed> = {
       loadCapacitancePf: 8,
       motionalCapacitanceFf: 2.4,
       shuntCapacitancePf: 0.9,
-      greatestResistanceOhm: 80,
       samplingRule: { kind: 'attribute', level: 'II', aqlPercent: 0.25 },
       decisionRule: { kind: 'guardedAcceptance', factor: 1 },
     },

@@ -6,6 +6,8 @@ import { holdsAndMail } from './005-holds-and-mail';
 import { history } from './006-history';
 import { uploadHeadings } from './010-upload-headings';
 import { holdRecords } from './020-hold-records';
+import { owedResistance } from './030-owed-resistance';
+import { nightlyRuns } from './031-nightly-runs';
 import { type Migration } from './migration';
 
 /** In order. A step that has run anywhere is never edited; a change is a new step. */
@@ -18,4 +20,6 @@ export const migrations: Migration[] = [
   history,
   uploadHeadings,
   holdRecords,
+  owedResistance,
+  nightlyRuns,
 ];

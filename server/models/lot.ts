@@ -37,6 +37,7 @@ export class Lot extends Model<InferAttributes<Lot>, InferCreationAttributes<Lot
   declare unitsPlanned: number;
   declare unitsMeasured: CreationOptional<number>;
   declare unitsLackingTemperatures: CreationOptional<number>;
+  declare unitsLackingResistance: CreationOptional<number>;
   declare beyondCount: CreationOptional<number | null>;
   declare finding: CreationOptional<'accept' | 'hold' | null>;
   declare planMet: CreationOptional<boolean | null>;
@@ -78,6 +79,7 @@ export class Lot extends Model<InferAttributes<Lot>, InferCreationAttributes<Lot
         unitsPlanned: { type: DataTypes.INTEGER, allowNull: false },
         unitsMeasured: { type: DataTypes.INTEGER, allowNull: true },
         unitsLackingTemperatures: { type: DataTypes.INTEGER, allowNull: true },
+        unitsLackingResistance: { type: DataTypes.INTEGER, allowNull: true },
         beyondCount: DataTypes.INTEGER,
         finding: DataTypes.TEXT,
         planMet: DataTypes.BOOLEAN,

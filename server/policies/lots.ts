@@ -13,6 +13,8 @@ export interface LotFacts {
   /** Something stands between the lot and acceptance. */
   owes: boolean;
   everDecided: boolean;
+  /** 100 % inspection was ordered before; ordering it again says nothing new. */
+  everyUnitOrdered: boolean;
 }
 
 const inspecting: LotState[] = ['received', 'under_inspection', 'awaiting_disposition'];
@@ -29,6 +31,7 @@ export function mayUpload(actor: Actor, state: LotState): boolean {
  */
 export function decisionsFor(facts: LotFacts): Decision[] {
   if (!facts.hasAnalysis || facts.awaitingSecondFrom) return [];
+  const orderEveryUnit: Decision[] = facts.everyUnitOrdered ? [] : ['inspect_all'];
   switch (facts.state) {
     case 'received':
       return [];
@@ -38,14 +41,14 @@ export function decisionsFor(facts: LotFacts): Decision[] {
         ...(facts.owes ? [] : (['accept'] as const)),
         'hold',
         'accept_under_concession',
-        'inspect_all',
+        ...orderEveryUnit,
         'reject',
       ];
     case 'on_hold':
       return [
         ...(facts.inspectedSinceHold && !facts.owes ? (['accept'] as const) : []),
         'accept_under_concession',
-        'inspect_all',
+        ...orderEveryUnit,
         'reject',
       ];
     case 'accepted':

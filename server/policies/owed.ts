@@ -10,10 +10,14 @@ export interface OwedFacts {
   openWarnings: number;
   criteriaApproved: boolean;
   benchOutOfCalibration: string | null;
+  /** An upload that counts names no bench, so nothing is known of its calibration. */
+  benchUnknown: boolean;
   requireBenchInCalibration: boolean;
   /** Sampled units that lack a reading at one of the required temperatures. */
   unitsLackingTemperatures: number;
   requiredTemperaturesC: number[];
+  /** Units without a resistance, where the part limits it. */
+  unitsLackingResistance: number;
   discontinued: boolean;
 }
 
@@ -32,6 +36,11 @@ export function owedItems(facts: OwedFacts): z.infer<typeof OwedItem>[] {
       text: `${countOf(facts.unitsLackingTemperatures, 'unit')} not yet read at every required temperature (${facts.requiredTemperaturesC.join(', ')} °C).`,
     });
   }
+  if (facts.unitsLackingResistance > 0)
+    owed.push({
+      kind: 'characteristics',
+      text: `${countOf(facts.unitsLackingResistance, 'unit')} not yet read for resistance, which the part limits.`,
+    });
   if (facts.uploadsRunning > 0)
     owed.push({
       kind: 'uploads_running',
@@ -53,6 +62,12 @@ export function owedItems(facts: OwedFacts): z.infer<typeof OwedItem>[] {
     owed.push({
       kind: 'bench',
       text: `${facts.benchOutOfCalibration} was out of calibration when it measured.`,
+    });
+  }
+  if (facts.requireBenchInCalibration && facts.benchUnknown) {
+    owed.push({
+      kind: 'bench',
+      text: 'An upload names no bench, so its calibration is not known: withdraw it and upload it with its bench.',
     });
   }
   if (facts.discontinued)

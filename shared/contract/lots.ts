@@ -50,6 +50,7 @@ export const OwedItem = z.object({
   kind: z.enum([
     'units',
     'temperatures',
+    'characteristics',
     'bench',
     'warnings',
     'criteria',

@@ -8,7 +8,7 @@ import { canonicalJson, sha256Hex } from '../../history/canonical';
 import { Analysis, Disposition, Lot, Upload } from '../../models';
 import { lockLot } from '../lots/find-lot';
 import { planOf } from '../lots/criteria-at-receipt';
-import { connectionOf, readReadings } from './read-readings';
+import { connectionOf, readReadings, type LotReadings } from './read-readings';
 import { judgingCriteria } from './judging-criteria';
 
 /**
@@ -19,7 +19,7 @@ import { judgingCriteria } from './judging-criteria';
 export async function analyseLot(
   transaction: Transaction,
   lotId: string,
-  gathered?: MeasuredUnits,
+  gathered?: LotReadings,
 ): Promise<void> {
   const lot = await lockLot(lotId, transaction);
   const criteria = await judgingCriteria(transaction, lot);
@@ -30,6 +30,8 @@ export async function analyseLot(
     unitsPlanned: plan.sampleSize,
     unitsMeasured: units.offsetsPpm.length,
     unitsLackingTemperatures: units.unitsLackingTemperatures,
+    unitsLackingResistance:
+      criteria.part.criteria.greatestResistanceOhm === null ? 0 : units.unitsLackingResistance,
   });
   if (canAnalyse(units)) await keepAnalysis(transaction, lot, criteria, units);
   else

@@ -3,7 +3,7 @@ import { type AnalysisCriteria, type JudgingBench } from '@shared/analysis/crite
 import { type SamplingRule } from '@shared/contract/parts';
 import {
   Bench,
-  Lot,
+  type Lot,
   Part,
   PartRevision,
   Receiver,

@@ -13,6 +13,11 @@ export function connectionOf(transaction: Transaction): ClientBase {
   return (transaction as unknown as { connection: ClientBase }).connection;
 }
 
+export interface LotReadings extends MeasuredUnits {
+  /** Units of which no reading gives a resistance. */
+  unitsLackingResistance: number;
+}
+
 /** Readings of a lot grouped by unit; a sub-lot holds the named units of its parent. */
 function readingsSql(lot: Lot): string {
   const uploadsOf = lot.parentLotId ?? lot.id;
@@ -37,12 +42,18 @@ export async function readReadings(
   transaction: Transaction,
   lot: Lot,
   part: PartCriteria,
-): Promise<MeasuredUnits> {
+): Promise<LotReadings> {
   const collector = new UnitCollector(part.referenceTemperatureC, part.requiredTemperaturesC);
   const offsetOf = makeOffsetPpm(part.nominalFrequencyHz);
   const stream = connectionOf(transaction).query(copyTo(readingsSql(lot)));
   let serial: string | null = null;
   let unit: UnitReading[] = [];
+  let unitsLackingResistance = 0;
+  const take = () => {
+    if (unit.length === 0) return;
+    collector.addUnit(unit);
+    if (unit.every(({ resistanceOhm }) => resistanceOhm === null)) unitsLackingResistance += 1;
+  };
   for await (const line of createInterface({ input: stream, crlfDelay: Infinity })) {
     const [
       lineSerial,
@@ -55,7 +66,7 @@ export async function readReadings(
       load,
     ] = line.split('\t') as [string, string, string, string, string, string, string, string];
     if (lineSerial !== serial) {
-      if (unit.length > 0) collector.addUnit(unit);
+      take();
       serial = lineSerial;
       unit = [];
     }
@@ -68,8 +79,8 @@ export async function readReadings(
       uploadNumber: Number(uploadNumber),
     });
   }
-  if (unit.length > 0) collector.addUnit(unit);
-  return collector.finish();
+  take();
+  return { ...collector.finish(), unitsLackingResistance };
 }
 
 function atPartsLoad(offsetPpm: number, part: PartCriteria, measuredLoadPf: number | null): number {

@@ -8,11 +8,12 @@ interface Row {
   uploads_running: number;
   open_warnings: number;
   bench_out: string | null;
+  bench_unknown: boolean;
   criteria_approved: boolean;
   live_decision: string | null;
   live_state: string | null;
   live_signer: string | null;
-  live_data_version: number | null;
+  inspected_since: boolean;
   ever_decided: boolean;
 }
 
@@ -26,13 +27,18 @@ export async function lotFacts(
     `SELECT
        (SELECT count(*)::int FROM uploads u WHERE u.lot_id = l.id AND u.state IN ('queued', 'running')) AS uploads_running,
        (SELECT count(*)::int FROM uploads u, jsonb_array_elements(u.warnings) w
-         WHERE u.lot_id = l.id AND u.state = 'done' AND NOT coalesce((w ->> 'cleared')::boolean, false)) AS open_warnings,
+         WHERE u.lot_id IN (l.id, l.parent_lot_id) AND u.state = 'done' AND NOT coalesce((w ->> 'cleared')::boolean, false)) AS open_warnings,
        (SELECT min(b.name) FROM uploads u JOIN benches b ON b.id = u.bench_id
-         WHERE u.lot_id = l.id AND u.state = 'done' AND u.bench_in_calibration = false) AS bench_out,
+         WHERE u.lot_id IN (l.id, l.parent_lot_id) AND u.state = 'done' AND u.rows_taken > 0 AND u.bench_in_calibration = false) AS bench_out,
+       EXISTS (SELECT FROM uploads u
+         WHERE u.lot_id IN (l.id, l.parent_lot_id) AND u.state = 'done' AND u.rows_taken > 0 AND u.bench_id IS NULL) AS bench_unknown,
        (pr.state = 'approved' AND NOT EXISTS (
          SELECT FROM lot_receivers lr JOIN receiver_revisions rr ON rr.id = lr.receiver_revision_id
          WHERE lr.lot_id = l.id AND rr.state <> 'approved')) AS criteria_approved,
-       d.decision AS live_decision, d.state AS live_state, d.signed_by AS live_signer, d.data_version AS live_data_version,
+       d.decision AS live_decision, d.state AS live_state, d.signed_by AS live_signer,
+       -- Readings that arrived after the hold was signed; a change of criteria or a withdrawal inspects nothing.
+       EXISTS (SELECT FROM uploads u
+         WHERE u.lot_id = l.id AND u.state = 'done' AND u.rows_taken > 0 AND u.created_at > d.signed_at) AS inspected_since,
        EXISTS (SELECT FROM dispositions x WHERE x.lot_id = l.id) AS ever_decided
      FROM lots l
      JOIN part_revisions pr ON pr.id = l.part_revision_id
@@ -49,17 +55,19 @@ export async function lotFacts(
     openWarnings: facts.open_warnings,
     criteriaApproved: facts.criteria_approved,
     benchOutOfCalibration: facts.bench_out,
+    benchUnknown: facts.bench_unknown,
     requireBenchInCalibration: criteria.requireBenchInCalibration,
     unitsLackingTemperatures: lot.unitsLackingTemperatures,
     requiredTemperaturesC: criteria.requiredTemperaturesC,
+    unitsLackingResistance: lot.unitsLackingResistance,
     discontinued: lot.severity === 'discontinued',
   };
   const owed = owedItems(owedFacts);
   const lotFactsForPolicy: LotFacts = {
     state: lot.state,
     hasAnalysis: lot.currentAnalysisId !== null,
-    inspectedSinceHold:
-      facts.live_decision === 'hold' && lot.dataVersion > (facts.live_data_version ?? 0),
+    inspectedSinceHold: facts.live_decision === 'hold' && facts.inspected_since,
+    everyUnitOrdered: lot.inspectAll,
     awaitingSecondFrom: facts.live_state === 'awaiting_second' ? facts.live_signer : null,
     owes: owed.length > 0,
     everDecided: facts.ever_decided,

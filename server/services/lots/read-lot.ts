@@ -58,6 +58,11 @@ export async function readLot(actor: Actor, id: string): Promise<LotView> {
   const { owed, facts } = await lotFacts(lot, revision.criteria);
   const plan = planOf(lot, revision.criteria.samplingRule);
   const today = revisionInForce(siblings, todayIso());
+  const newerReceiver = lot.receiverRevisions!.some((r) => {
+    const own = receiverSiblings.filter((sibling) => sibling.receiverId === r.receiverId);
+    const inForce = revisionInForce(own, todayIso());
+    return inForce && inForce.id !== r.id;
+  });
   return {
     ...presentLotRow(record, actor),
     registeredBy: { id: lot.registeredBy, name: lot.registrar?.name ?? '' },
@@ -94,7 +99,8 @@ export async function readLot(actor: Actor, id: string): Promise<LotView> {
       upload: mayUpload(actor, lot.state),
       decide: mayDecide(actor, facts),
       countersign: mayCountersign(actor, facts),
-      rejudge: mayRejudge(actor, facts) && Boolean(today && today.id !== revision.id),
+      rejudge:
+        mayRejudge(actor, facts) && (newerReceiver || Boolean(today && today.id !== revision.id)),
       withdrawUpload: mayUpload(actor, lot.state),
       change: mayChangeLot(actor, facts),
     },

@@ -1,3 +1,4 @@
+import { type Transaction } from 'sequelize';
 import { act } from '../../history/act';
 import { type Actor } from '../../http/actor';
 import { Conflict, InvalidInput, NotAllowed } from '../../http/errors';
@@ -15,6 +16,18 @@ export interface Rejudgement {
   reason: string;
   partRevisionId: string;
   receiverRevisionIds?: string[];
+}
+
+/** New ones are approved, and no receiver judges by two revisions at once. */
+async function checkReceivers(transaction: Transaction, ids: string[], before: string[]) {
+  const revisions = await ReceiverRevision.findAll({ where: { id: ids }, transaction });
+  const refuse = (sentence: string) => {
+    throw new InvalidInput(sentence, { receiverRevisionIds: sentence });
+  };
+  const usable = revisions.filter((r) => r.state === 'approved' || before.includes(r.id));
+  if (usable.length !== ids.length) refuse('Choose approved receiver revisions.');
+  if (new Set(revisions.map((r) => r.receiverId)).size !== ids.length)
+    refuse('Choose one revision of each receiver.');
 }
 
 /**
@@ -51,14 +64,7 @@ export async function rejudgeLot(actor: Actor, id: string, input: Rejudgement): 
     const receiverRevisionIds = [
       ...new Set(input.receiverRevisionIds ?? before.receiverRevisionIds),
     ].sort();
-    const known = await ReceiverRevision.count({
-      where: { id: receiverRevisionIds, state: 'approved' },
-      transaction,
-    });
-    if (known !== receiverRevisionIds.length)
-      throw new InvalidInput('Choose approved receiver revisions.', {
-        receiverRevisionIds: 'One of these is not approved.',
-      });
+    await checkReceivers(transaction, receiverRevisionIds, before.receiverRevisionIds);
     if (
       revision.id === before.partRevisionId &&
       receiverRevisionIds.join() === before.receiverRevisionIds.join()

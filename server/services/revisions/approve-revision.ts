@@ -5,6 +5,7 @@ import { PartRevision } from '../../models';
 import { mayTakeEffect } from '../../policies/revisions';
 import { proveSigner } from '../signing/prove-signer';
 import { sign } from '../signing/sign';
+import { judgeDraftLotsAnew } from './judge-draft-lots-anew';
 import { revisedKinds, type RevisedKind } from './kinds';
 
 export interface Approval {
@@ -61,6 +62,7 @@ export async function approveRevision(
       approvalSignatureId: signature.id,
     });
     await revision.save({ transaction });
+    await judgeDraftLotsAnew(transaction, kind, revision.id);
     return {
       result: undefined,
       entry: {

@@ -5,6 +5,7 @@ import { type Actor } from '../../http/actor';
 import { ChangedMeanwhile, Conflict, NotFound } from '../../http/errors';
 import { act } from '../../history/act';
 import { PartRevision, ReceiverRevision } from '../../models';
+import { judgeDraftLotsAnew } from './judge-draft-lots-anew';
 import { revisedKinds, type RevisedKind } from './kinds';
 
 export interface RevisionInput {
@@ -116,6 +117,7 @@ export function changeRevision(
     if (kind === 'part')
       revision.set('nominalFrequencyHz', (after.criteria as PartCriteria).nominalFrequencyHz);
     await revision.save({ transaction });
+    await judgeDraftLotsAnew(transaction, kind, revision.id);
     return {
       result: undefined,
       entry: { recordType, recordId: revision.id, before, after: { ...after } },
