@@ -191,12 +191,14 @@ export class RowJudge {
     return false;
   }
 
-  /** `# 1000 rows`, the last line of our own exports. */
+  /** `# end of export: 1000 rows`, the last line of our own exports. */
   private isTrailer(bytes: Buffer, bounds: Int32Array, count: number): boolean {
     if (bytes[bounds[0]!] !== 35 || count > limits.columns) return false;
     for (let field = 1; field < count; field += 1)
       if (bounds[2 * field] !== bounds[2 * field + 1]) return false;
-    const found = /^# (\d{1,12}) rows?\s*$/.exec(bytes.toString('latin1', bounds[0], bounds[1]));
+    const found = /^# end of export: (\d{1,12}) rows\s*$/.exec(
+      bytes.toString('latin1', bounds[0], bounds[1]),
+    );
     if (!found) return false;
     this.announcedRows = Number(found[1]);
     return true;
@@ -207,7 +209,7 @@ export class RowJudge {
     const { frequencies, extras } = plan;
     let serialBytes = bytes;
     let serialStart = 0;
-    let serialEnd = 0;
+    let serialEnd: number;
     if (plan.serial >= 0) {
       serialStart = trimStart(bytes, bounds[2 * plan.serial]!, bounds[2 * plan.serial + 1]!);
       serialEnd = trimEnd(bytes, serialStart, bounds[2 * plan.serial + 1]!);

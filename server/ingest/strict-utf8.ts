@@ -37,7 +37,7 @@ export class StrictUtf8 {
 }
 
 /** Bytes at the end that begin a character without finishing it. */
-function unfinished(bytes: Buffer): number {
+export function unfinished(bytes: Buffer): number {
   for (let back = 1; back <= Math.min(3, bytes.length); back += 1) {
     const byte = bytes[bytes.length - back]!;
     if (byte < 0x80) return 0;
@@ -50,7 +50,7 @@ function unfinished(bytes: Buffer): number {
 }
 
 /** Length of the longest valid beginning. */
-export function validLength(block: Buffer): number {
+function validLength(block: Buffer): number {
   let low = 0;
   let high = block.length;
   while (low < high) {

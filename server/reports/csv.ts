@@ -9,7 +9,8 @@ export interface CsvColumn<Row> {
 }
 
 const strictNumber = /^[+-]?(\d+(\.\d*)?|\.\d+)([eE][+-]?\d+)?$/;
-const formula = /^\s*[=+\-@\t\r\n]/;
+// Apostrophes in front count too, so that reading a file of ours can take exactly one away again.
+const formula = /^'*\s*[=+\-@\t\r\n]/;
 
 /** One field. A text that a spreadsheet could run gets an apostrophe in front; a number never does. */
 export function csvField(value: string | number | null, kind: 'number' | 'text'): string {
@@ -18,6 +19,11 @@ export function csvField(value: string | number | null, kind: 'number' | 'text')
   const safe =
     kind === 'number' && strictNumber.test(text) ? text : formula.test(text) ? `'${text}` : text;
   return /[",\r\n]/.test(safe) || safe !== safe.trim() ? `"${safe.replaceAll('"', '""')}"` : safe;
+}
+
+/** Text of a column that may hold both: what is a number stays, what a spreadsheet would run is neutralised. */
+export function spreadsheetSafe(text: string): string {
+  return !strictNumber.test(text) && formula.test(text) ? `'${text}` : text;
 }
 
 /** Last line of every export: whoever reads the file can tell that none of it is missing. */
@@ -45,4 +51,19 @@ export async function writeCsv<Row>(
     if (response.destroyed) return;
   }
   response.end(`${csvTrailer(count)}\r\n`);
+}
+
+/** Streams text that is CSV already, as fast as the reader takes it. */
+export async function streamText(
+  response: Response,
+  fileName: string,
+  pieces: AsyncIterable<string>,
+): Promise<void> {
+  response.status(200).type('text/csv; charset=utf-8').attachment(fileName);
+  for await (const text of pieces) {
+    if (!response.write(text))
+      await Promise.race([once(response, 'drain'), once(response, 'close')]);
+    if (response.destroyed) return;
+  }
+  response.end();
 }

@@ -6,7 +6,7 @@ import { Bench, Upload } from '../../models';
 export async function chooseBench(
   lotId: string,
   benchId: string | undefined,
-  transaction: Transaction,
+  transaction: Transaction | undefined,
 ): Promise<Bench | null> {
   if (benchId) {
     const named = await Bench.findOne({ where: { id: benchId, active: true }, transaction });

@@ -6,7 +6,7 @@ import { config } from '../../config';
 import { longTransaction } from '../../database/connection';
 import { type Actor } from '../../http/actor';
 import { InvalidInput, TooLarge } from '../../http/errors';
-import { Lot, Upload } from '../../models';
+import { type Lot, Upload } from '../../models';
 import { type StoredFile, storeFile } from './stored-file';
 
 /** A file that has arrived and lies in an open transaction, until the act that uses it commits. */
@@ -157,9 +157,7 @@ function isOpen(transaction: Transaction): boolean {
 /** A name to show, never a path: the last part, without control characters, of bearable length. */
 export function safeFileName(name: string): string {
   const last = name.split(/[\\/]/).at(-1) ?? '';
-  // eslint-disable-next-line no-control-regex
-  const clean = last
-    .replace(/[\u0000-\u001f\u007f-\u009f\u200e\u200f\u202a-\u202e\u2066-\u2069]/g, '')
-    .trim();
+
+  const clean = last.replace(/[\p{Cc}\p{Bidi_Control}]/gu, '').trim();
   return clean.slice(0, 200) || 'file.csv';
 }
