@@ -11,6 +11,7 @@ import benches from './benches';
 import people from './people';
 import history from './history';
 import mail from './mail';
+import upload from './upload';
 
 /** English, one file an area. Another language is a folder beside this one with the same files. */
 export default {
@@ -27,4 +28,5 @@ export default {
   people,
   history,
   mail,
+  upload,
 };
