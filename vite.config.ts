@@ -22,6 +22,7 @@ export default defineConfig(({ isSsrBuild }) => ({
     : { outDir: 'dist/client', emptyOutDir: true, sourcemap: false },
   server: {
     port: 5173,
-    proxy: { '/api': process.env.QUARTZHOLD_API ?? 'http://127.0.0.1:3000' },
+    // The browser's own host stays in the request, so that the server sees a page of its own.
+    proxy: { '/api': { target: process.env.QUARTZHOLD_API ?? 'http://127.0.0.1:3000', changeOrigin: false } },
   },
 }));
