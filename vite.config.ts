@@ -23,6 +23,11 @@ export default defineConfig(({ isSsrBuild }) => ({
   server: {
     port: 5173,
     // The browser's own host stays in the request, so that the server sees a page of its own.
-    proxy: { '/api': { target: process.env.QUARTZHOLD_API ?? 'http://127.0.0.1:3000', changeOrigin: false } },
+    proxy: {
+      '/api': {
+        target: process.env.QUARTZHOLD_API ?? 'http://127.0.0.1:3000',
+        changeOrigin: false,
+      },
+    },
   },
 }));
