@@ -22,6 +22,8 @@ export default defineConfig(({ isSsrBuild }) => ({
     : { outDir: 'dist/client', emptyOutDir: true, sourcemap: false },
   server: {
     port: 5173,
+    // The local database writes there all the time.
+    watch: { ignored: ['**/.local/**', '**/tests/artifacts/**'] },
     // The browser's own host stays in the request, so that the server sees a page of its own.
     proxy: {
       '/api': {
