@@ -42,7 +42,14 @@ body { margin: 0; background: #fbf9f6; color: #2c2729; }
 .swagger-ui a, .swagger-ui .info a { color: #5d4690; }
 .swagger-ui .btn { border-color: #5d4690; color: #5d4690; border-radius: 3px; }
 .swagger-ui .btn.execute { background: #5d4690; color: #ffffff; }
-.swagger-ui .opblock { border-radius: 3px; box-shadow: none; }
+.swagger-ui .btn.authorize { border-color: #5d4690; color: #5d4690; }
+.swagger-ui .btn.authorize svg { fill: #5d4690; }
+.swagger-ui .info .title small, .swagger-ui .info .title small.version-stamp { background: #6d6467; border-radius: 3px; }
+.swagger-ui .markdown code, .swagger-ui .renderedMarkdown code { color: #4a3775; background: #f0ecf6; }
+.swagger-ui .opblock.opblock-get, .swagger-ui .opblock.opblock-post, .swagger-ui .opblock.opblock-put,
+.swagger-ui .opblock.opblock-delete { background: #ffffff; border-color: #dcd5cf; border-radius: 3px; box-shadow: none; }
+.swagger-ui .opblock .opblock-summary { border-color: #dcd5cf; }
+.swagger-ui .opblock .tab-header .tab-item.active h4 span::after { background: #5d4690; }
 .swagger-ui .opblock.opblock-get .opblock-summary-method { background: #6d6467; }
 .swagger-ui .opblock.opblock-post .opblock-summary-method,
 .swagger-ui .opblock.opblock-put .opblock-summary-method { background: #5d4690; }

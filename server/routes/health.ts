@@ -8,14 +8,16 @@ export const healthRoutes = [
   route(contract.readHealth, async ({ actor, response }) => {
     const detailed = actor?.role === 'administrator';
     const checks = await readHealth(detailed);
-    // Only what stops every request makes the server unfit; the rest degrades it and needs somebody to look.
-    if (!checks[0]!.ok) response.status(503);
-    return {
+    const health = {
       status: checks.every((check) => check.ok) ? ('ok' as const) : ('degraded' as const),
       version: detailed ? (process.env.npm_package_version ?? '0.1.0') : '',
       now: new Date().toISOString(),
       checks: detailed ? checks : [],
     };
+    if (checks[0]!.ok) return health;
+    // Only what stops every request makes the server unfit; the rest degrades it and needs somebody to look.
+    response.status(503).json(health);
+    return undefined;
   }),
   route(contract.readOpenApi, async ({ response }) => {
     response.json(openApi());

@@ -1,5 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { SessionStore } from '../../server/http/session-store';
+import { pruneSessions } from '../../server/services/sessions/list-sessions';
 import { useConfig } from '../../server/config';
 import { createApp } from '../../server/app';
 import request from 'supertest';
@@ -201,6 +202,18 @@ describe('a session ends', () => {
       api.people.quality.id,
     ]);
     await withCookie(cookie).expect(401);
+  });
+});
+
+describe('sessions that have ended by time', () => {
+  it('are neither listed nor kept, and the others are left alone', async () => {
+    await api.database.pool.query('DELETE FROM sessions');
+    await cookieOf('supplier');
+    await minutesPass(api, 61);
+    const agent = await api.agentFor('supplier');
+    expect((await agent.get('/api/sessions').expect(200)).body.items).toHaveLength(1);
+    expect(await pruneSessions()).toBe(1);
+    await agent.get('/api/session').expect(200);
   });
 });
 
