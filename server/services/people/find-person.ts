@@ -2,13 +2,13 @@ import { type Transaction } from 'sequelize';
 import { ChangedMeanwhile, Conflict, InvalidInput, NotFound } from '../../http/errors';
 import { Person, Supplier } from '../../models';
 
-/** The person, locked for the rest of the transaction. */
+/** The person, locked for the rest of the transaction; the key stays free for files that they are still sending. */
 export async function lockPerson(
   transaction: Transaction,
   id: string,
   version?: number,
 ): Promise<Person> {
-  const person = await Person.findByPk(id, { transaction, lock: transaction.LOCK.UPDATE });
+  const person = await Person.findByPk(id, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
   if (!person) throw new NotFound('This person');
   if (version !== undefined && person.version !== version) throw new ChangedMeanwhile();
   return person;
@@ -21,7 +21,7 @@ export async function countActiveAdministrators(transaction: Transaction): Promi
     where: { role: 'administrator', state: 'active' },
     order: ['id'],
     transaction,
-    lock: transaction.LOCK.UPDATE,
+    lock: transaction.LOCK.NO_KEY_UPDATE,
   });
   return rows.length;
 }

@@ -11,7 +11,10 @@ export async function readTablePreferences(actor: Actor) {
 /** Act `preference.table`: which columns a person sees in a table. */
 export function setTablePreference(actor: Actor, table: string, columns: string[]): Promise<void> {
   return act(actor, 'preference.table', async (transaction) => {
-    const person = await Person.findByPk(actor.id, { transaction, lock: transaction.LOCK.UPDATE });
+    const person = await Person.findByPk(actor.id, {
+      transaction,
+      lock: transaction.LOCK.NO_KEY_UPDATE,
+    });
     if (!person) throw new NotFound('This person');
     const before = person.tablePreferences[table] ?? null;
     await person.update(
