@@ -26,3 +26,7 @@ export const readLotHistory = (id: string, after: string | undefined, signal?: A
 
 export const readingsCsvAddress = (id: string) =>
   addressOf(contract.exportReadings, { params: { id } });
+
+/** The filtered list as CSV, however many rows it has. */
+export const lotsCsvAddress = (query: QueryInput<typeof contract.exportLots>) =>
+  addressOf(contract.exportLots, { query });

@@ -5,12 +5,9 @@ export type ThemeChoice = 'system' | 'light' | 'dark';
 
 const storageKey = 'quartzhold.preferences';
 
-/** What a person prefers on this machine: theme and the columns of each table. public/theme.js reads the same key before the first paint. */
+/** What a person prefers on this machine: the theme. public/theme.js reads the same key before the first paint. */
 export const usePreferences = defineStore('preferences', () => {
-  const kept = read();
-  const theme = ref<ThemeChoice>(kept.theme);
-  /** Hidden columns by table name. */
-  const hiddenColumns = ref<Record<string, string[]>>(kept.hiddenColumns);
+  const theme = ref<ThemeChoice>(read());
 
   watch(
     theme,
@@ -20,37 +17,23 @@ export const usePreferences = defineStore('preferences', () => {
     },
     { immediate: true },
   );
-  watch(
-    [theme, hiddenColumns],
-    () => keep({ theme: theme.value, hiddenColumns: hiddenColumns.value }),
-    { deep: true },
-  );
+  watch(theme, keep);
 
-  function setHidden(table: string, columns: string[]): void {
-    hiddenColumns.value = { ...hiddenColumns.value, [table]: columns };
-  }
-
-  return { theme, hiddenColumns, setHidden };
+  return { theme };
 });
 
-interface Kept {
-  theme: ThemeChoice;
-  hiddenColumns: Record<string, string[]>;
-}
-
-function read(): Kept {
+function read(): ThemeChoice {
   try {
-    const kept = JSON.parse(localStorage.getItem(storageKey) ?? '{}') as Partial<Kept>;
-    const theme = kept.theme === 'light' || kept.theme === 'dark' ? kept.theme : 'system';
-    return { theme, hiddenColumns: kept.hiddenColumns ?? {} };
+    const kept = JSON.parse(localStorage.getItem(storageKey) ?? '{}') as { theme?: unknown };
+    return kept.theme === 'light' || kept.theme === 'dark' ? kept.theme : 'system';
   } catch {
-    return { theme: 'system', hiddenColumns: {} };
+    return 'system';
   }
 }
 
-function keep(kept: Kept): void {
+function keep(theme: ThemeChoice): void {
   try {
-    localStorage.setItem(storageKey, JSON.stringify(kept));
+    localStorage.setItem(storageKey, JSON.stringify({ theme }));
   } catch {
     // Private windows may refuse; the choice then lasts as long as the page.
   }

@@ -1,1 +1,9 @@
-export default {};
+import lot from './lot';
+import list from './lots-list';
+import register from './lots-register';
+
+export default {
+  lot,
+  list,
+  register,
+};
