@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { endpoint } from './endpoint';
+import { LotNumber } from './lots';
 import {
   Id,
   IdParams,
@@ -145,7 +146,7 @@ export const sortLot = endpoint({
   summary: 'After 100 % inspection: conforming units go on as a sub-lot, the rest is rejected',
   body: SigningFields.extend({
     analysisId: Id,
-    subLotNumber: z.string().trim().min(1).max(80),
+    subLotNumber: LotNumber,
     treatment: z.enum(['return_to_supplier', 'scrap']),
   }),
   answer: z.object({ subLotId: Id }),

@@ -8,7 +8,6 @@ import {
   ListQuery,
   OptionalShortText,
   PersonRef,
-  ShortText,
   SigningFields,
   houseRoles,
   listOf,
@@ -127,13 +126,15 @@ export const Lot = LotRow.extend({
 });
 export type Lot = z.infer<typeof Lot>;
 
+export const LotNumber = z
+  .string()
+  .trim()
+  .min(1, 'Give the lot its number.')
+  .max(80, 'At most 80 characters.')
+  .regex(/^[\p{L}\p{N} ._/#-]+$/u, 'Use letters, digits, space and . _ / # -');
+
 export const RegisterLot = z.object({
-  lotNumber: z
-    .string()
-    .trim()
-    .min(1, 'Give the lot its number.')
-    .max(80, 'At most 80 characters.')
-    .regex(/^[\p{L}\p{N} ._/#-]+$/u, 'Use letters, digits, space and . _ / # -'),
+  lotNumber: LotNumber,
   partId: Id,
   supplierId: Id,
   dateCode: z.string().trim().max(40).default(''),

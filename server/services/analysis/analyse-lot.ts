@@ -6,6 +6,7 @@ import { type AnalysisResult } from '@shared/contract/analysis';
 import { type LotState } from '@shared/contract/lots';
 import { canonicalJson, sha256Hex } from '../../history/canonical';
 import { Analysis, Disposition, Lot, Upload } from '../../models';
+import { restoreHold } from '../dispositions/restore-hold';
 import { lockLot } from '../lots/find-lot';
 import { planOf } from '../lots/criteria-at-receipt';
 import { connectionOf, readReadings, type LotReadings } from './read-readings';
@@ -138,6 +139,7 @@ async function overtakeDecisions(transaction: Transaction, lot: Lot): Promise<bo
     { state: live.decision === 'inspect_all' ? 'superseded' : 'overtaken' },
     { transaction },
   );
+  await restoreHold(transaction, lot);
   return live.decision !== 'inspect_all';
 }
 

@@ -2,7 +2,7 @@ import { type Decision, type SignDisposition } from '@shared/contract/dispositio
 import { type Transaction } from 'sequelize';
 import { type Actor } from '../../http/actor';
 import { Conflict } from '../../http/errors';
-import { Analysis, Disposition, Lot, PartRevision, Person } from '../../models';
+import { Analysis, Disposition, type Lot, PartRevision, Person } from '../../models';
 import { decisionsFor } from '../../policies/lots';
 import { lotFacts } from '../lots/lot-facts';
 

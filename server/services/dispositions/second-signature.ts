@@ -2,11 +2,12 @@ import { type Transaction } from 'sequelize';
 import { act } from '../../history/act';
 import { type Actor } from '../../http/actor';
 import { Conflict, NotFound } from '../../http/errors';
-import { Analysis, Disposition, Lot } from '../../models';
+import { Analysis, Disposition, type Lot } from '../../models';
 import { lockLot } from '../lots/find-lot';
 import { proveSigner } from '../signing/prove-signer';
 import { sign } from '../signing/sign';
 import { dispositionContent } from './disposition-content';
+import { restoreHold } from './restore-hold';
 import { changeState, closeOpenHold } from './sign-disposition';
 
 async function waiting(
@@ -91,6 +92,7 @@ export async function refuseSecond(actor: Actor, id: string, reason: string): Pr
   await act(actor, name, async (transaction) => {
     const { disposition, lot } = await waiting(transaction, id);
     await disposition.update({ state: 'refused' }, { transaction });
+    await restoreHold(transaction, lot);
     return {
       result: undefined,
       entry: {

@@ -5,7 +5,7 @@ import { type Transaction } from 'sequelize';
 import { act, record } from '../../history/act';
 import { type Actor } from '../../http/actor';
 import { Conflict, InvalidInput } from '../../http/errors';
-import { Analysis, Disposition, Hold, Lot } from '../../models';
+import { type Analysis, Disposition, Hold, type Lot } from '../../models';
 import { closeHold } from '../holds/close-hold';
 import { openHold } from '../holds/open-hold';
 import { analyseLot } from '../analysis/analyse-lot';
@@ -26,9 +26,11 @@ export async function signDisposition(
 ): Promise<string> {
   await proveSigner(actor, input.password);
   return act(actor, 'disposition.sign', async (transaction) => {
-    const lot = await lockLot(lotId, transaction);
+    const containLotIds = input.decision === 'hold' ? [...new Set(input.containLotIds ?? [])] : [];
+    const lot = await lockLots(transaction, lotId, containLotIds);
     const analysis = await checkDisposition(transaction, actor, lot, input);
     refuseDayPast(input);
+    askForCorrection(lot, input);
     const before = { state: lot.state, dispositionId: null as string | null };
     const { disposition, contentHash } = await writeDisposition(
       transaction,
@@ -38,7 +40,7 @@ export async function signDisposition(
       input,
     );
     await takeEffect(transaction, actor, lot, analysis, disposition, input);
-    for (const otherId of input.decision === 'hold' ? (input.containLotIds ?? []) : []) {
+    for (const otherId of containLotIds) {
       await contain(transaction, actor, lot, analysis, otherId, input);
     }
     return {
@@ -56,12 +58,20 @@ export async function signDisposition(
           analysisId: analysis.id,
           resultHash: analysis.resultHash,
           contentHash,
-          containedLotIds: input.containLotIds ?? [],
+          correction: input.correction ?? '',
+          containedLotIds: containLotIds,
         },
         reason: input.reason,
       },
     };
   });
+}
+
+/** All lots of the act in one order, so that two people who hold each other's lots along do not wait in a ring. */
+async function lockLots(transaction: Transaction, lotId: string, others: string[]): Promise<Lot> {
+  const locked = new Map<string, Lot>();
+  for (const id of [lotId, ...others].sort()) locked.set(id, await lockLot(id, transaction));
+  return locked.get(lotId)!;
 }
 
 /** Writes and signs the decision and freezes the analysis it rests on. Used for the lot itself and for lots held with it. */
@@ -216,6 +226,7 @@ async function contain(
     other.partId !== cause.partId ||
     other.supplierId !== cause.supplierId ||
     other.dateCode !== cause.dateCode ||
+    cause.dateCode === '' ||
     other.id === cause.id
   ) {
     throw new InvalidInput(
@@ -225,6 +236,11 @@ async function contain(
   }
   if (other.state === 'on_hold' || other.state === 'rejected')
     throw new Conflict('lot.state', `Lot ${other.lotNumber} is on hold or rejected already.`);
+  if (await Disposition.count({ where: { lotId: otherId, state: 'awaiting_second' }, transaction }))
+    throw new Conflict(
+      'disposition.awaiting_second',
+      `A concession of lot ${other.lotNumber} waits for its second signature. Refuse that one first.`,
+    );
   const reason = `Held with lot ${cause.lotNumber}: ${input.reason}`;
   const { disposition, contentHash } = await writeDisposition(transaction, actor, other, analysis, {
     ...input,
@@ -248,6 +264,14 @@ async function contain(
       contentHash,
     },
   });
+}
+
+/** What was nonconforming is accepted only once it is said what was corrected (ISO 9001:2015 8.7.2). */
+function askForCorrection(lot: Lot, { decision, correction }: SignDisposition) {
+  if (lot.state === 'on_hold' && decision === 'accept' && !correction)
+    throw new InvalidInput('Say what was corrected before the lot is accepted after its hold.', {
+      correction: 'Say what was corrected.',
+    });
 }
 
 function refuseDayPast({ concession }: SignDisposition) {

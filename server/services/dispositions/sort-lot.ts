@@ -42,6 +42,7 @@ export async function sortLot(actor: Actor, lotId: string, input: Sorting): Prom
         subLotNumber: 'This lot number is registered already.',
       });
     }
+    const before = { state: lot.state };
     const criteria = await judgingCriteria(transaction, lot);
     const {
       toleranceLowPpm: lowPpm,
@@ -108,7 +109,7 @@ export async function sortLot(actor: Actor, lotId: string, input: Sorting): Prom
         recordType: 'lot',
         recordId: lot.id,
         lotId: lot.id,
-        before: { state: 'awaiting_disposition' },
+        before,
         after: {
           state: 'rejected',
           treatment: input.treatment,

@@ -10,9 +10,12 @@ export function findLotByNumber(lotNumber: string, transaction?: Transaction): P
   });
 }
 
-/** Takes the lot for change: whoever comes second waits, and then sees what the first one did. */
+/**
+ * Takes the lot for change: whoever comes second waits, and then sees what the first one did. The lock leaves the key
+ * free, because an upload that is still arriving holds on to it and must hold nobody up.
+ */
 export async function lockLot(id: string, transaction: Transaction): Promise<Lot> {
-  const lot = await Lot.findByPk(id, { transaction, lock: transaction.LOCK.UPDATE });
+  const lot = await Lot.findByPk(id, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
   if (!lot) throw new NotFound('This lot');
   return lot;
 }

@@ -10,7 +10,6 @@ interface Row {
   bench_out: string | null;
   bench_unknown: boolean;
   criteria_approved: boolean;
-  live_decision: string | null;
   live_state: string | null;
   live_signer: string | null;
   inspected_since: boolean;
@@ -35,10 +34,11 @@ export async function lotFacts(
        (pr.state = 'approved' AND NOT EXISTS (
          SELECT FROM lot_receivers lr JOIN receiver_revisions rr ON rr.id = lr.receiver_revision_id
          WHERE lr.lot_id = l.id AND rr.state <> 'approved')) AS criteria_approved,
-       d.decision AS live_decision, d.state AS live_state, d.signed_by AS live_signer,
+       d.state AS live_state, d.signed_by AS live_signer,
        -- Readings that arrived after the hold was signed; a change of criteria or a withdrawal inspects nothing.
        EXISTS (SELECT FROM uploads u
-         WHERE u.lot_id = l.id AND u.state = 'done' AND u.rows_taken > 0 AND u.created_at > d.signed_at) AS inspected_since,
+         WHERE u.lot_id = l.id AND u.state = 'done' AND u.rows_taken > 0 AND u.created_at >
+           (SELECT max(h.signed_at) FROM dispositions h WHERE h.lot_id = l.id AND h.decision = 'hold')) AS inspected_since,
        EXISTS (SELECT FROM dispositions x WHERE x.lot_id = l.id) AS ever_decided
      FROM lots l
      JOIN part_revisions pr ON pr.id = l.part_revision_id
@@ -66,7 +66,7 @@ export async function lotFacts(
   const lotFactsForPolicy: LotFacts = {
     state: lot.state,
     hasAnalysis: lot.currentAnalysisId !== null,
-    inspectedSinceHold: facts.live_decision === 'hold' && facts.inspected_since,
+    inspectedSinceHold: lot.state === 'on_hold' && facts.inspected_since,
     everyUnitOrdered: lot.inspectAll,
     awaitingSecondFrom: facts.live_state === 'awaiting_second' ? facts.live_signer : null,
     owes: owed.length > 0,

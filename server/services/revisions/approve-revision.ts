@@ -1,7 +1,7 @@
 import { type Actor } from '../../http/actor';
 import { Conflict, InvalidInput, NotFound } from '../../http/errors';
 import { act } from '../../history/act';
-import { PartRevision } from '../../models';
+import { type PartRevision } from '../../models';
 import { mayTakeEffect } from '../../policies/revisions';
 import { proveSigner } from '../signing/prove-signer';
 import { sign } from '../signing/sign';

@@ -19,7 +19,7 @@ export async function judgeDraftLotsAnew(
   revisionId: string,
 ): Promise<void> {
   const lots = await Lot.sequelize!.query<{ id: string }>(
-    `SELECT id FROM lots WHERE ${underRevision[kind]} AND state <> 'rejected' ORDER BY id FOR UPDATE`,
+    `SELECT id FROM lots WHERE ${underRevision[kind]} AND state <> 'rejected' ORDER BY id FOR NO KEY UPDATE`,
     { replacements: { revisionId }, type: QueryTypes.SELECT, transaction },
   );
   if (lots.length === 0) return;

@@ -25,7 +25,11 @@ export class WrongSigningPassword extends ActionError {
 export async function proveSigner(actor: Actor, password: string): Promise<void> {
   if (actor.kind !== 'person') throw new NotAllowed('Only a person can sign.');
   const refusal = await inTransaction(async (transaction) => {
-    const person = await Person.findByPk(actor.id, { transaction, lock: transaction.LOCK.UPDATE });
+    // The key stays free: a file that this person is still sending holds on to it.
+    const person = await Person.findByPk(actor.id, {
+      transaction,
+      lock: transaction.LOCK.NO_KEY_UPDATE,
+    });
     if (!person || person.state !== 'active') return new NotAllowed();
     const now = new Date();
     if (person.signingLockedUntil && person.signingLockedUntil > now)

@@ -17,6 +17,8 @@ import { enqueue } from '../../jobs/boss';
 import { queues } from '../../jobs/queues';
 import { Bench, Lot, Part, PartRevision, Upload } from '../../models';
 import { analyseLot } from '../analysis/analyse-lot';
+import { lockLot } from '../lots/find-lot';
+import { type LotReadings } from '../analysis/read-readings';
 import { rememberMapping } from './saved-mappings';
 
 type Warning = z.infer<typeof UploadWarning>;
@@ -104,7 +106,9 @@ async function loadOnce(upload: Upload, token: string): Promise<void> {
         mapping,
         nominalHz: criteria.nominalFrequencyHz,
         referenceTemperatureC: criteria.referenceTemperatureC,
+        requiredTemperaturesC: criteria.requiredTemperaturesC,
         repeatReadings: criteria.repeatReadings,
+        gather: upload.lot!.parentLotId === null,
         chamber: {
           lowC: upload.bench?.chamberLowC ?? null,
           highC: upload.bench?.chamberHighC ?? null,
@@ -138,6 +142,13 @@ async function finishUpload(
   { judge, readingsSha256 }: Loaded,
 ): Promise<void> {
   const client = connectionOf(transaction);
+  // Lot first, then its upload: the order that every act keeps, so that none waits for another in a ring.
+  const lot = await lockLot(upload.lotId, transaction);
+  if (lot.state === 'rejected')
+    throw new FileRefused(
+      'lot.closed',
+      `Lot ${lot.lotNumber} was rejected while this file was being read: no readings are taken for it any more.`,
+    );
   const mapping: Mapping = upload.mapping!;
   const warnings: Warning[] = [
     ...upload.warnings,
@@ -190,22 +201,33 @@ async function finishUpload(
       ...(savedVersion === null ? {} : { savedMappingVersion: savedVersion }),
     },
   });
-  if (judge.taken > 0) await analyseOrLater(transaction, upload.lotId);
+  if (judge.taken > 0) await analyseOrLater(transaction, upload.lotId, gatheredBy(judge));
   await client.query('SELECT pg_notify($1, $2)', [uploadsChannel, upload.id]);
 }
 
 /** The readings are worth keeping even if they cannot be analysed now: the lot then owes its analysis, which is tried again. */
-async function analyseOrLater(transaction: Transaction, lotId: string): Promise<void> {
+async function analyseOrLater(
+  transaction: Transaction,
+  lotId: string,
+  gathered: LotReadings | undefined,
+): Promise<void> {
   const client = connectionOf(transaction);
   await client.query('SAVEPOINT analysis');
   try {
-    await analyseLot(transaction, lotId);
+    await analyseLot(transaction, lotId, gathered);
     await client.query('RELEASE SAVEPOINT analysis');
   } catch (error) {
     await client.query('ROLLBACK TO SAVEPOINT analysis');
     console.error('The analysis of a lot failed and is tried again later.', error);
     await enqueue(transaction, queues.analyse, { lotId });
   }
+}
+
+/** What passed by while the file was read, if that is all the analysis needs. */
+function gatheredBy(judge: RowJudge): LotReadings | undefined {
+  if (!judge.gathered) return undefined;
+  const units = judge.gathered.finish();
+  return { ...units, unitsLackingResistance: units.readings - judge.resistances };
 }
 
 /** Ends an upload that cannot be loaded: nothing of it but its bytes and the reason is kept. */
