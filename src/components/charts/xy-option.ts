@@ -57,7 +57,11 @@ export function xyOption(
       ...axis(y),
       nameLocation: 'end' as const,
       nameGap: 12,
-      nameTextStyle: { ...base.axis.nameTextStyle, align: 'left' as const, padding: [0, 0, 0, -50] },
+      nameTextStyle: {
+        ...base.axis.nameTextStyle,
+        align: 'left' as const,
+        padding: [0, 0, 0, -50],
+      },
       splitLine: { show: true, lineStyle: { color: colours.line } },
     },
     ...(zooms && {
