@@ -31,6 +31,8 @@ export const HistoryFilter = z.object({
   from: z.string().max(40).optional(),
   to: z.string().max(40).optional(),
   field: z.string().max(80).optional(),
+  /** One entry by its number. */
+  sequence: z.coerce.number().int().positive().optional(),
 });
 export const listHistory = endpoint({
   method: 'get',

@@ -1,4 +1,4 @@
-import { formatNumber } from './number';
+import { formatNumber, groupThousands } from './number';
 import { countOf } from './counts';
 import { type Quantity, quantityText } from './quantity';
 
@@ -32,6 +32,14 @@ export function roughDuration(seconds: number): string {
   if (span < 60 * DAY) return countOf(Math.round(span / DAY), 'day');
   if (span < 730 * DAY) return countOf(Math.round(span / (30.44 * DAY)), 'month');
   return countOf(Math.round(span / (365.25 * DAY)), 'year');
+}
+
+/** How long something has waited, for a narrow column: '2 min', '5 h', '4 d'. */
+export function waitingParts(seconds: number): Quantity {
+  const span = Math.max(0, seconds);
+  if (span < HOUR) return { number: String(Math.max(1, Math.floor(span / MINUTE))), unit: 'min' };
+  if (span < DAY) return { number: String(Math.floor(span / HOUR)), unit: 'h' };
+  return { number: groupThousands(String(Math.floor(span / DAY))), unit: 'd' };
 }
 
 function scaled(seconds: number, step: number, unit: string): Quantity {

@@ -17,15 +17,16 @@ export interface CallOptions<E> {
   /** Sent as multipart instead of `body`. */
   form?: FormData;
   signal?: AbortSignal;
+  isBackground?: boolean;
 }
 
 /** Calls an endpoint of shared/contract; the answer has the type the contract gives it. */
 export function call<E extends AnyEndpoint>(
   endpoint: E,
-  { params, query, body, form, signal }: CallOptions<E> = {},
+  { params, query, body, form, signal, isBackground }: CallOptions<E> = {},
 ): Promise<AnswerOf<E>> {
   const path = pathOf(endpoint, params);
-  const options = { query: query as RequestOptions['query'], signal };
+  const options = { query: query as RequestOptions['query'], signal, isBackground };
   switch (endpoint.method) {
     case 'get':
       return api.get<AnswerOf<E>>(path, options);

@@ -12,6 +12,8 @@ export interface RequestOptions {
   signal?: AbortSignal;
   /** A refusal of this request is no sign that the session ended (sign-in itself, the first look at the session). */
   expectsSignedOut?: boolean;
+  /** Asked by a clock, not by the person at the desk: it must not keep the session alive. */
+  isBackground?: boolean;
 }
 
 /** `get('/api/lots', {query})`, `post('/api/lots', body)`; a FormData body is sent as multipart. Throws ApiError only, or AbortError. */
@@ -39,6 +41,7 @@ async function send<Answer>(
 ): Promise<Answer> {
   const headers: Record<string, string> = { Accept: 'application/json' };
   if (method !== 'GET') Object.assign(headers, ownHeader);
+  if (options.isBackground) headers['X-Quartzhold-Background'] = '1';
   let payload: BodyInit | undefined;
   if (body instanceof FormData) payload = body;
   else if (body !== undefined) {

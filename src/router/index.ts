@@ -2,6 +2,7 @@ import { createRouter, createWebHistory, type RouteRecordRaw } from 'vue-router'
 import './meta';
 import { guard } from './guard';
 import { authRoutes } from './auth';
+import { accountRoutes } from './account';
 import { workRoutes } from './work';
 import { lotsRoutes } from './lots';
 import { holdsRoutes } from './holds';
@@ -35,6 +36,7 @@ export function makeRouter() {
     history: createWebHistory(),
     routes: [
       ...authRoutes,
+      ...accountRoutes,
       ...workRoutes,
       ...lotsRoutes,
       ...holdsRoutes,

@@ -50,6 +50,7 @@ export function historyConditions(filter: Filter): { sql: string; values: unknow
     values.push(value);
     parts.push(sql.replaceAll('?', `$${values.length}`));
   };
+  if (filter.sequence) add('s.sequence = ?', filter.sequence);
   if (filter.act) add('e.act = ?', filter.act);
   if (filter.actorId) add('e.actor_id = ?', filter.actorId);
   if (filter.recordType) add('e.record_type = ?', filter.recordType);

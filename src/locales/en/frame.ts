@@ -47,6 +47,13 @@ export default {
   },
   offline:
     'No connection to the server. What you wrote is still here; it is tried again by itself.',
+  sessionEnding: {
+    title: 'Your session is about to end.',
+    text: 'Nobody has touched this page for a while. Stay signed in, or sign in again later: what you wrote is kept.',
+    final:
+      'It has reached its greatest length. Save what you can now; after that you sign in again in place and nothing is lost.',
+    stay: 'Stay signed in',
+  },
   sessionEnded: {
     title: 'Your session has ended',
     text: 'Sign in again to go on. Nothing you wrote on this page is lost.',

@@ -1,6 +1,7 @@
 import common from './common';
 import frame from './frame';
 import auth from './auth';
+import account from './account';
 import work from './work';
 import lots from './lots';
 import holds from './holds';
@@ -18,6 +19,7 @@ export default {
   ...common,
   frame,
   auth,
+  account,
   work,
   lots,
   holds,

@@ -1,1 +1,22 @@
-export default {};
+export default {
+  title: 'My work',
+  failed: 'What waits for you could not be read.',
+  lot: 'Lot',
+  partSupplier: 'Part, supplier, date code',
+  strip: 'Units against limits and receiver',
+  beyond: 'Beyond',
+  of: 'of {count}',
+  state: 'State',
+  waiting: 'Waiting',
+  next: 'Next',
+  measured: 'Units measured',
+  unitsOf: 'of {count} units',
+  measuredOf: '{lot}: units measured',
+  hold: 'Hold',
+  task: 'What',
+  since: 'Since',
+  due: 'Due',
+  noReadings: 'no readings yet',
+  more: 'And one more | And one more | And {count} more',
+  register: 'Register a lot',
+};
