@@ -17,7 +17,7 @@ export class KeyTable {
 
   /** True when the key was new. */
   add(high: number, low: number): boolean {
-    if (4 * (this.count + 1) > 3 * this.slots) this.grow();
+    if (4 * (this.count + 1) > 3 * this.slots) this.grow(2 * this.slots);
     if (high === 0 && low === 0) high = 1;
     const { keys } = this;
     const mask = this.slots - 1;
@@ -53,9 +53,16 @@ export class KeyTable {
     }
   }
 
-  private grow(): void {
+  /** Makes room for so many keys at once. */
+  reserve(count: number): void {
+    let slots = this.slots;
+    while (4 * (count + 1) > 3 * slots) slots *= 2;
+    if (slots > this.slots) this.grow(slots);
+  }
+
+  private grow(slots: number): void {
     const { keys, conditions, marks } = this;
-    this.slots *= 2;
+    this.slots = slots;
     const mask = this.slots - 1;
     this.keys = new Int32Array(2 * this.slots);
     if (this.withMore) {

@@ -44,9 +44,12 @@ export async function loadFile(
     `COPY readings (${readingColumns(mapping).join(', ')}) FROM STDIN (FORMAT binary)`,
     (block) => hash.update(block),
   );
-  const judge = new RowJudge(options, writer);
-  tell.judge(judge);
   const earlier = await countedUploads(client, options.lotId);
+  const judge = new RowJudge(
+    { ...options, gather: options.gather && earlier.length === 0 },
+    writer,
+  );
+  tell.judge(judge);
   const series = mapping.shape === 'time_series';
   const conditions = { series, referenceTemperatureC: options.referenceTemperatureC };
   await rememberEarlier(client, earlier, judge.units, conditions);

@@ -1,4 +1,5 @@
 import { type Mapping } from '@shared/contract/uploads';
+import { REFERENCE_WINDOW_K, UnitCollector } from '@shared/analysis/units';
 import { formatDecimal, parseDecimal } from '@shared/radio/decimal';
 import { makeOffsetPpm } from '@shared/radio/offset-reader';
 import { toHzText } from '@shared/radio/units';
@@ -18,7 +19,10 @@ export interface JudgeOptions {
   uploadNumber: number;
   nominalHz: string;
   referenceTemperatureC: number;
+  requiredTemperaturesC: readonly number[];
   repeatReadings: 'refuse' | 'repeat';
+  /** Whether this file alone makes up the lot's readings, so far as is known. */
+  gather: boolean;
   /** Outside it no temperature of this bench can lie; null: unknown. */
   chamber: { lowC: number | null; highC: number | null };
 }
@@ -61,6 +65,12 @@ export class RowJudge {
   refusals: Refusal[] = [];
   suspects: Suspect[] = [];
   readonly units = new UnitTable();
+  /**
+   * What the analysis needs, gathered while rows pass by, as long as every unit has one reading at the reference
+   * temperature; null once that is not so, and the analysis reads the table instead.
+   */
+  gathered: UnitCollector | null;
+  resistances = 0;
   readonly columnNames: string[];
 
   private readonly plan: FieldPlan;
@@ -82,6 +92,9 @@ export class RowJudge {
   private temperatureNumeric = Buffer.alloc(0);
   private temperatureCondition = 0;
   private temperatureOutside = false;
+  private temperatureIsReference = false;
+  /** Offset of the frequency written last. */
+  private ppm = 0;
   private temperaturePlain = '';
 
   constructor(
@@ -102,6 +115,11 @@ export class RowJudge {
     this.expected = mapping.columns.length;
     this.delimiter = mapping.delimiter;
     this.columnNames = mapping.columns.map((_, index) => `column ${index + 1}`);
+    const atOtherLoads = mapping.columns.some((column) => column.target === 'loadCapacitance');
+    this.gathered =
+      options.gather && !this.series && !atOtherLoads && this.plan.frequencies.length === 1
+        ? new UnitCollector(options.referenceTemperatureC, options.requiredTemperaturesC)
+        : null;
     this.rowBytes =
       this.plan.frequencies.length *
       (300 + 4 * limits.serialCharacters + 60 * this.plan.extras.length);
@@ -276,15 +294,20 @@ export class RowJudge {
           at = putInt64(out, at, micros);
         }
       }
-      for (const extra of extras) at = this.writeExtra(out, at, bytes, bounds, extra.field);
+      let resistance = false;
+      for (const extra of extras) {
+        const before = at;
+        at = this.writeExtra(out, at, bytes, bounds, extra.field);
+        if (extra.column === 'resistance_ohm') resistance = at > before + 4;
+      }
       writer.at = at;
 
       if (frequencies.length > 1) conditions.push(condition);
-      const known =
+      const sighting =
         frequencies.length > 1
-          ? this.units.knows(serialBytes, serialStart, serialEnd, condition)
-          : this.units.see(serialBytes, serialStart, serialEnd, condition) === 'known';
-      if (known && options.repeatReadings === 'refuse') {
+          ? this.units.knows(serialBytes, serialStart, serialEnd, condition) && 'known'
+          : this.units.see(serialBytes, serialStart, serialEnd, condition);
+      if (sighting === 'known' && options.repeatReadings === 'refuse') {
         this.suspects.push({
           fileLine,
           serial: serialBytes.toString('utf8', serialStart, serialEnd),
@@ -300,6 +323,14 @@ export class RowJudge {
         );
       }
       if (hasTemperature && this.temperatureOutside) this.outsideChamber += 1;
+      if (this.gathered) {
+        if (sighting !== 'new_unit' || (hasTemperature && !this.temperatureIsReference))
+          this.gathered = null;
+        else {
+          this.gathered.addSingle(this.ppm, options.uploadNumber, fileLine);
+          if (resistance) this.resistances += 1;
+        }
+      }
     }
     if (given === 0)
       throw new Refused('frequency.missing', 'The row holds no frequency.', frequencies[0]!.field);
@@ -338,6 +369,7 @@ export class RowJudge {
       throw new Refused('frequency.not_positive', 'A frequency must be above zero.', field);
     if (source[from] === 43) from += 1;
     const ppm = this.offset.ofBytes(source, from, to);
+    this.ppm = ppm;
     if (ppm > IMPLAUSIBLE_PPM || ppm < -IMPLAUSIBLE_PPM) this.implausible += 1;
     putInt32(out, at, next - at - 4);
     return next;
@@ -417,6 +449,8 @@ export class RowJudge {
     this.temperatureCondition = this.conditionOf(plain);
     this.temperatureOutside =
       (lowC !== null && celsius < lowC) || (highC !== null && celsius > highC);
+    this.temperatureIsReference =
+      Math.abs(celsius - this.options.referenceTemperatureC) <= REFERENCE_WINDOW_K;
     this.temperaturePlain = plain;
     this.temperatureText = Buffer.alloc(0);
     return true;

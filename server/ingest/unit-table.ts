@@ -1,4 +1,5 @@
 import { randomBytes } from 'node:crypto';
+import { AscendingRun } from './ascending-run';
 import { KeyTable } from './key-table';
 
 /** What is already known of a reading's serial and condition. */
@@ -18,6 +19,8 @@ export class UnitTable {
   /** Units of this upload, and those of them that earlier uploads of the lot had already. */
   unitsCount = 0;
   overlapCount = 0;
+  /** As long as serials only ascend, none can repeat and no table is needed. */
+  private run: AscendingRun | null = new AscendingRun();
   private readonly units = new KeyTable(true);
   private readonly pairs = new KeyTable(false);
   private readonly seed = randomBytes(8);
@@ -27,6 +30,14 @@ export class UnitTable {
   /** @param condition 32-bit hash of what must differ between two readings of a unit */
   see(bytes: Uint8Array, start: number, end: number, condition: number, earlier = false): Sighting {
     this.hash(bytes, start, end);
+    if (this.run) {
+      if (!earlier && this.run.take(bytes, start, end, this.high, this.low, condition)) {
+        this.unitsCount += 1;
+        return 'new_unit';
+      }
+      this.leaveRun();
+      this.hash(bytes, start, end);
+    }
     const { units } = this;
     const isNewUnit = units.add(this.high, this.low);
     const slot = units.slot;
@@ -49,10 +60,25 @@ export class UnitTable {
 
   /** Whether the unit was read at this condition, without remembering anything. */
   knows(bytes: Uint8Array, start: number, end: number, condition: number): boolean {
+    if (this.run) {
+      if (this.run.isBeyond(bytes, start, end)) return false;
+      this.leaveRun();
+    }
     this.hash(bytes, start, end);
     if (!this.units.has(this.high, this.low)) return false;
     if (this.units.conditions[this.units.slot] === condition) return true;
     return this.pairs.has(this.pairHigh(condition), this.pairLow(condition));
+  }
+
+  private leaveRun(): void {
+    const { units } = this;
+    units.reserve(this.run!.count);
+    this.run!.each((high, low, condition) => {
+      units.add(high, low);
+      units.conditions[units.slot] = condition;
+      units.marks[units.slot] = SEEN_HERE;
+    });
+    this.run = null;
   }
 
   private high = 0;

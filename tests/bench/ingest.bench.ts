@@ -128,7 +128,7 @@ async function bulkCreate(url: string, file: string, size: number): Promise<Benc
   );
   Reading.removeAttribute('id');
   const ms = await timed(async () => {
-    let batch: object[] = [];
+    let batch: Record<string, string | undefined>[] = [];
     let taken = -1;
     const input = createReadStream(file);
     for await (const line of createInterface({ input })) {
