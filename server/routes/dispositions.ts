@@ -1,5 +1,6 @@
 import * as contract from '@shared/contract/dispositions';
 import { route } from '../http/route';
+import { writeCertificate } from '../services/dispositions/read-certificate';
 import {
   readContainment,
   readDisposition,
@@ -23,6 +24,9 @@ export const dispositionRoutes = [
     return readDisposition(params.id);
   }),
   route(contract.proposeContainment, ({ params }) => readContainment(params.id)),
+  route(contract.readCertificate, ({ params, query, response }) =>
+    writeCertificate(params.id, query.dispositionId, response),
+  ),
   route(contract.sortLot, async ({ actor, params, body }) => ({
     subLotId: await sortLot(actor, params.id, body),
   })),

@@ -1,6 +1,7 @@
 import { type Decision, type SignDisposition } from '@shared/contract/dispositions';
 import { type AnalysisResult } from '@shared/contract/analysis';
-import { type Analysis, type Lot } from '../../models';
+import { type Transaction } from 'sequelize';
+import { type Analysis, type Lot, Part, Supplier } from '../../models';
 
 /** What a signature says, in words. */
 export const meanings: Record<Decision, string> = {
@@ -12,12 +13,15 @@ export const meanings: Record<Decision, string> = {
 };
 
 /** Everything the signer saw and decided: lot, readings, criteria, result and decision are bound together by one hash. */
-export function dispositionContent(
+export async function dispositionContent(
+  transaction: Transaction,
   lot: Lot,
   analysis: Analysis,
   input: Omit<SignDisposition, 'password'>,
 ) {
   const result = JSON.parse(analysis.resultText) as AnalysisResult;
+  const supplier = await Supplier.findByPk(lot.supplierId, { transaction });
+  const part = await Part.findByPk(lot.partId, { transaction });
   return {
     lot: {
       id: lot.id,
@@ -28,6 +32,8 @@ export function dispositionContent(
       receivedOn: lot.receivedOn,
       dataVersion: lot.dataVersion,
     },
+    supplierName: supplier?.name ?? '',
+    deviceKind: part?.deviceKind ?? '',
     decision: input.decision,
     reason: input.reason,
     treatment: input.treatment ?? null,

@@ -58,12 +58,12 @@ export async function countersign(
       meaning: 'acceptance under concession, second signature',
       reason: input.reason,
       content: {
-        ...dispositionContent(lot, analysis, {
+        ...(await dispositionContent(transaction, lot, analysis, {
           decision: disposition.decision,
           reason: disposition.reason,
           analysisId: analysis.id,
           concession: disposition.concession ?? undefined,
-        }),
+        })),
         firstSignatureHash: disposition.contentHash,
       },
     });

@@ -116,7 +116,7 @@ export async function writeDisposition(
     recordVersion: number,
     meaning: meanings[input.decision],
     reason: input.reason,
-    content: dispositionContent(lot, analysis, input),
+    content: await dispositionContent(transaction, lot, analysis, input),
   });
   await disposition.update(
     { contentHash: signature.contentHash, signedAt: signature.signedAt },
