@@ -22,7 +22,7 @@ const receivers = {
       farEndTolerancePpm: 20,
       greatestSpeedMps: 35,
       serviceLifeYears: 10,
-      allowedShareBeyond: 0.01,
+      allowedShareBeyond: 0.02,
     },
   },
   'Fieldnode 868 MHz': {
@@ -36,7 +36,7 @@ const receivers = {
       farEndTolerancePpm: 2.5,
       greatestSpeedMps: 10,
       serviceLifeYears: 10,
-      allowedShareBeyond: 0.005,
+      allowedShareBeyond: 0.03,
     },
   },
   'Harbourlink 5.8 GHz': {
@@ -50,7 +50,7 @@ const receivers = {
       farEndTolerancePpm: 25,
       greatestSpeedMps: 15,
       serviceLifeYears: 8,
-      allowedShareBeyond: 0.01,
+      allowedShareBeyond: 0.04,
     },
   },
   'Ridgeline relay 3.5 GHz': {
