@@ -11,7 +11,18 @@ export function changesOf({ before, after }: Pick<HistoryEntry, 'before' | 'afte
   const fields = new Set([...Object.keys(before ?? {}), ...Object.keys(after ?? {})]);
   return [...fields]
     .map((field) => ({ field, before: before?.[field], after: after?.[field] }))
-    .filter((change) => JSON.stringify(change.before) !== JSON.stringify(change.after));
+    .filter(
+      (change) =>
+        JSON.stringify(change.before) !== JSON.stringify(change.after) &&
+        !(kindOf(change.before) === 'nothing' && kindOf(change.after) === 'nothing'),
+    )
+    .sort((a, b) => rank(a) - rank(b));
+}
+
+/** What changed from one value to another is read first, then what reads as words; ids and whole structures last. */
+function rank({ before, after }: Change): number {
+  if (kindOf(before) !== 'nothing') return 0;
+  return { text: 1, flag: 1, instant: 1, nothing: 2, structure: 3, code: 4 }[kindOf(after)];
 }
 
 /** 'correctiveAction' as a person reads it: 'corrective action'. Units at the end stay units. */

@@ -36,9 +36,9 @@ export default {
     'A hold opens when a quality engineer signs “hold” on a lot; its supplier hears of it the same minute.',
   emptySupplier: 'A notice comes here, and by mail, the minute one of your lots is held.',
   hold: {
-    title: 'Hold {number}',
-    onLot: 'Lot {lot}, {part}',
-    goAct: 'Go to your answer',
+    title: 'Hold on lot {lot}',
+    onLot: '{number} · {part} · {supplier}',
+    goAct: 'Go to what you can do',
     about: 'Lot',
     lot: 'Lot number',
     part: 'Part',
