@@ -29,7 +29,7 @@ export function useForm<Values extends object>({
   const failure = ref<string | null>(null);
 
   const valueOf = (field: string) => JSON.stringify((values as Record<string, unknown>)[field]);
-  const found = computed(() => validate(structuredClone(deepRaw(values))));
+  const found = computed(() => validate(structuredClone(plain(values))));
 
   const errors = computed(() => {
     const shown: Record<string, string> = {};
@@ -59,7 +59,7 @@ export function useForm<Values extends object>({
     }
     isSending.value = true;
     try {
-      await send(structuredClone(deepRaw(values)));
+      await send(structuredClone(plain(values)));
       before.value = JSON.stringify(values);
       wasTried.value = false;
       left.clear();
@@ -89,7 +89,7 @@ export function useForm<Values extends object>({
   }
 
   function reset(to: Values = initial): void {
-    Object.assign(values, structuredClone(deepRaw(to)));
+    Object.assign(values, structuredClone(plain(to)));
     before.value = JSON.stringify(values);
     wasTried.value = false;
     left.clear();
@@ -100,12 +100,13 @@ export function useForm<Values extends object>({
   return { values, errors, failure, isDirty, isSending, leave, submit, reset };
 }
 
-function deepRaw<Value>(value: Value): Value {
+/** A plain copy. Read through the reactive values, so that whoever computes from it is told when one changes. */
+function plain<Value>(value: Value): Value {
+  if (Array.isArray(value)) return value.map(plain) as Value;
   const raw = toRaw(value);
-  if (Array.isArray(raw)) return raw.map(deepRaw) as Value;
   if (raw !== null && typeof raw === 'object' && Object.getPrototypeOf(raw) === Object.prototype) {
     return Object.fromEntries(
-      Object.entries(raw).map(([key, one]) => [key, deepRaw(one)]),
+      Object.entries(value as object).map(([key, one]) => [key, plain(one)]),
     ) as Value;
   }
   return raw;

@@ -34,10 +34,14 @@ export function xyOption(
     inverse: isInverse,
     scale: true,
     ...base.axis,
+    axisLine: { ...base.axis.axisLine, onZero: false },
     splitLine: { show: false },
     axisLabel: {
       ...base.axis.axisLabel,
       hideOverlap: true,
+      // The ends of an axis that was cut to its data are seldom round.
+      showMinLabel: min === undefined || Number.isInteger(min),
+      showMaxLabel: max === undefined || Number.isInteger(max),
       formatter: format ?? ((value: number) => formatNumber(value, { significant: 6 })),
     },
   });
@@ -48,14 +52,17 @@ export function xyOption(
     grid: { left: 56, right: 20, top: 32, bottom: 46, outerBoundsMode: 'none' as const },
     tooltip: {
       ...base.tooltip,
-      trigger: 'item' as const,
-      formatter: ({ dataIndex, seriesIndex }: { dataIndex: number; seriesIndex: number }) =>
-        seriesIndex === 0 ? tip(dataIndex) : '',
+      trigger: 'axis' as const,
+      axisPointer: { type: 'line' as const, lineStyle: { color: colours.edge } },
+      formatter: (points: readonly { dataIndex: number; seriesIndex: number }[]) => {
+        const first = points.find(({ seriesIndex }) => seriesIndex === 0);
+        return first ? tip(first.dataIndex) : '';
+      },
     },
     xAxis: { ...axis(x), nameLocation: 'middle' as const, nameGap: 28 },
     yAxis: {
       ...axis(y),
-      nameLocation: 'end' as const,
+      nameLocation: y.isInverse ? ('start' as const) : ('end' as const),
       nameGap: 12,
       nameTextStyle: {
         ...base.axis.nameTextStyle,
@@ -111,7 +118,6 @@ export function readableLine(
     symbolSize: 7,
     showSymbol: false,
     silent: false,
-    triggerLineEvent: true,
     ...more,
   };
 }
@@ -121,7 +127,7 @@ export interface Mark {
   text: string;
   color: string;
   isDashed?: boolean;
-  position?: 'start' | 'end' | 'insideEndTop' | 'insideStartTop' | 'insideEndBottom';
+  position?: 'start' | 'end';
 }
 
 /** Straight lines across the chart with a word at their end: limits, boundaries, the lot's own value. */

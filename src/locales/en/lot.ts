@@ -32,6 +32,7 @@ export default {
   ppk: 'Ppk',
   ppkBound: 'at least {bound}',
   shareBeyond: 'Share {beyond}',
+  shareTable: 'Methods side by side',
   method: 'Method',
   estimate: 'Estimate',
   bound: '95 % bound',

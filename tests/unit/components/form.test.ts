@@ -25,6 +25,18 @@ test('a form says nothing until a field is left or it is sent', async () => {
   expect(form.errors.value).toEqual({ lotNumber: 'This is needed.', lotSize: 'At least 1.' });
 });
 
+test('a field that is mended is not wrong any more, and one that is spoilt is', async () => {
+  const form = lotForm();
+  await form.submit(vi.fn());
+  expect(form.errors.value).toHaveProperty('lotSize');
+  form.values.lotSize = 5;
+  expect(form.errors.value).toEqual({ lotNumber: 'This is needed.' });
+  form.values.lotNumber = 'L-1';
+  expect(form.errors.value).toEqual({});
+  form.values.lotSize = 0;
+  expect(form.errors.value).toEqual({ lotSize: 'At least 1.' });
+});
+
 test('an error of the server stands at its field until that field changes', async () => {
   const form = lotForm();
   Object.assign(form.values, { lotNumber: 'L-1', lotSize: 5 });
