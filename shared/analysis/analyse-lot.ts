@@ -16,10 +16,12 @@ import { normalQuantile } from '../statistics/distributions/normal';
 import { clopperPearson } from '../statistics/fraction-beyond';
 import { andersonDarling } from '../statistics/normality';
 import { moments } from '../statistics/moments';
+import { countBelow, countUpTo } from '../statistics/sorted';
 import { toleranceInterval } from '../statistics/tolerance';
 import { countBeyondBounds, farthestBeyond, isBeyond, type Bounds } from './beyond-units';
 import { type AnalysisCriteria } from './criteria';
 import { judgeLinks, partBudget } from './links';
+import { settledOnLimits } from './on-limits';
 import { describeTemperature } from './temperature';
 import { describeTime } from './time';
 import { type MeasuredUnits, type UnitPlace } from './units';
@@ -55,14 +57,16 @@ export function analyseLot({ units, criteria, refusedRows, identify }: LotInput)
   sortedPpm: Float64Array;
 } {
   const part = criteria.part.criteria;
-  const lot = describeOffsets(units.offsetsPpm);
   const limits: Bounds = { lowPpm: part.toleranceLowPpm, highPpm: part.toleranceHighPpm };
+  const offsetsPpm = settledOnLimits(units.offsetsPpm, limits);
+  const lot = describeOffsets(offsetsPpm);
   const assessed = assessLimits(lot, { low: limits.lowPpm, high: limits.highPpm }, CONFIDENCE);
   const wholeLot = lot.units >= criteria.lotSize;
   const links = judgeLinks(lot.sortedPpm, part, criteria.receivers, wholeLot);
   const strictest = links[0] ?? null;
   const allowance = strictest && {
-    lowPpm: -Math.max(0, strictest.allowance.forUnitPpm),
+    // Nothing left is an allowance of no width; 0 less it keeps a zero from becoming minus zero.
+    lowPpm: 0 - Math.max(0, strictest.allowance.forUnitPpm),
     highPpm: Math.max(0, strictest.allowance.forUnitPpm),
     receiverName: strictest.receiverName,
   };
@@ -110,13 +114,17 @@ export function analyseLot({ units, criteria, refusedRows, identify }: LotInput)
     refusedRows,
     inspectionState: criteria.severity,
   });
-  const listed = farthestBeyond(units.offsetsPpm, allowance ? [limits, allowance] : [limits]);
+  const listed = farthestBeyond(
+    offsetsPpm,
+    lot.sortedPpm,
+    allowance ? [limits, allowance] : [limits],
+  );
   const placeOf = (i: number): UnitPlace => ({
     uploadNumber: units.uploadNumbers[i]!,
     fileLine: units.fileLines[i]!,
   });
   const unitsBeyond = listed.indices.map((i) => {
-    const offsetPpm = units.offsetsPpm[i]!;
+    const offsetPpm = offsetsPpm[i]!;
     const beyondLimits = isBeyond(offsetPpm, limits);
     const both = beyondLimits && allowance !== null && isBeyond(offsetPpm, allowance);
     return {
@@ -334,8 +342,13 @@ function worstLinks(links: AnalysisResult['links']) {
 function bodyNormality(lot: LotDescription): { a2: number; p: number } | null {
   const outliers = lot.outliers?.outliers ?? [];
   if (outliers.length === 0) return lot.normality && { a2: lot.normality.a2, p: lot.normality.p };
-  const set = new Set(outliers);
-  const body = lot.sortedPpm.filter((value) => !set.has(value));
+  // Outliers stand at the ends of the sorted lot, and so does what agrees with one of them.
+  const low = outliers.filter((value) => value < lot.medianPpm);
+  const high = outliers.filter((value) => value >= lot.medianPpm);
+  const body = lot.sortedPpm.subarray(
+    low.length > 0 ? countUpTo(lot.sortedPpm, Math.max(...low)) : 0,
+    high.length > 0 ? countBelow(lot.sortedPpm, Math.min(...high)) : lot.units,
+  );
   if (body.length < 8) return null;
   const { mean, sd } = moments(body);
   if (!(sd > 0)) return null;
@@ -452,12 +465,12 @@ function probabilityPlot(sortedPpm: Float64Array): [number, number][] {
   const n = sortedPpm.length;
   const most = 512;
   const tail = 64;
-  const keep = (i: number) => n <= most || i < tail || i >= n - tail;
   const stride = Math.max(1, Math.ceil((n - 2 * tail) / (most - 2 * tail)));
   const points: [number, number][] = [];
-  for (let i = 0; i < n; i += 1) {
-    if (keep(i) || (i - tail) % stride === 0)
-      points.push([normalQuantile((i + 1 - 0.375) / (n + 0.25)), sortedPpm[i]!]);
+  for (let i = 0; i < n;) {
+    points.push([normalQuantile((i + 1 - 0.375) / (n + 0.25)), sortedPpm[i]!]);
+    if (n <= most || i < tail || i >= n - tail) i += 1;
+    else i = Math.min(i + stride, n - tail);
   }
   return points;
 }

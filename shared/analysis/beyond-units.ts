@@ -19,18 +19,50 @@ export function countBeyondBounds(sortedPpm: Float64Array, { lowPpm, highPpm }: 
   return below + above;
 }
 
-/** Indices of the units beyond any of the bounds, the farthest out first, at most MOST_LISTED. */
+/**
+ * Indices of the units beyond any of the bounds, the farthest beyond the tightest of them first, at most MOST_LISTED; of
+ * equally far units the one that came first. One pass over the lot, and never more held than is listed.
+ * @param offsetsPpm in order of arrival @param sortedPpm the same, ascending
+ */
 export function farthestBeyond(
   offsetsPpm: Float64Array,
+  sortedPpm: Float64Array,
   bounds: readonly Bounds[],
 ): { indices: number[]; truncated: boolean } {
+  const low = Math.max(...bounds.map(({ lowPpm }) => lowPpm ?? -Infinity));
+  const high = Math.min(...bounds.map(({ highPpm }) => highPpm ?? Infinity));
+  /** How far beyond the tightest bounds; zero or below for a unit within all of them. */
+  const excess = (offsetPpm: number) => Math.max(low - offsetPpm, offsetPpm - high);
+
+  // The farthest units stand at the ends of the sorted lot: that tells the least excess that is still listed.
+  const listed: number[] = [];
+  let from = 0;
+  let to = sortedPpm.length - 1;
+  let next = 0;
+  while (from <= to) {
+    const [atLow, atHigh] = [excess(sortedPpm[from]!), excess(sortedPpm[to]!)];
+    next = Math.max(atLow, atHigh);
+    if (!(next > 0) || listed.length === MOST_LISTED) break;
+    listed.push(next);
+    if (atLow >= atHigh) from += 1;
+    else to -= 1;
+  }
+  const truncated = from <= to && next > 0;
+  const least = listed.at(-1);
+  if (least === undefined) return { indices: [], truncated };
+
+  let equalLeft = listed.filter((value) => value === least).length;
   const indices: number[] = [];
   for (let i = 0; i < offsetsPpm.length; i += 1) {
-    if (bounds.some((b) => isBeyond(offsetsPpm[i]!, b))) indices.push(i);
+    const offsetPpm = offsetsPpm[i]!;
+    const beyond = Math.max(low - offsetPpm, offsetPpm - high);
+    if (beyond < least) continue;
+    if (beyond === least) {
+      if (equalLeft === 0) continue;
+      equalLeft -= 1;
+    }
+    indices.push(i);
   }
-  const middle = bounds.map((b) => ((b.lowPpm ?? 0) + (b.highPpm ?? 0)) / 2)[0] ?? 0;
-  indices.sort(
-    (a, b) => Math.abs(offsetsPpm[b]! - middle) - Math.abs(offsetsPpm[a]! - middle) || a - b,
-  );
-  return { indices: indices.slice(0, MOST_LISTED), truncated: indices.length > MOST_LISTED };
+  indices.sort((a, b) => excess(offsetsPpm[b]!) - excess(offsetsPpm[a]!) || a - b);
+  return { indices, truncated };
 }

@@ -1,6 +1,7 @@
 import { clopperPearson } from '../statistics/fraction-beyond';
 import { histogram } from '../statistics/histogram';
 import { countBeyondBounds, type Bounds } from './beyond-units';
+import { settledOnLimits } from './on-limits';
 
 export interface WhatIf {
   limits: Bounds;
@@ -12,14 +13,15 @@ export interface WhatIf {
 }
 
 /**
- * What other limits would mean for a lot, without saving anything. Cheap enough to follow a dragged limit: two binary
- * searches, one beta quantile, one histogram.
+ * What other limits would mean for a lot, without saving anything. Cheap enough to follow a dragged limit: one pass,
+ * two binary searches, one beta quantile, one histogram.
  * @param sortedPpm ascending offsets in ppm, at least one
  * @throws StatisticsError when limits are crossed or both missing
  */
 export function tryLimits(sortedPpm: Float64Array, limits: Bounds): WhatIf {
-  const drawn = histogram(sortedPpm, { limits: [{ low: limits.lowPpm, high: limits.highPpm }] });
-  const count = countBeyondBounds(sortedPpm, limits);
+  const settledPpm = settledOnLimits(sortedPpm, limits);
+  const drawn = histogram(settledPpm, { limits: [{ low: limits.lowPpm, high: limits.highPpm }] });
+  const count = countBeyondBounds(settledPpm, limits);
   return {
     limits,
     count,

@@ -1,7 +1,7 @@
 import { requireFinite } from '../statistics/checks';
 import { requireLimits } from './checks';
 import { guardBandPpm } from './guard-band';
-import { isBeyond, type DecisionRule, type Limits } from './rule';
+import { isBeyond, ON_LIMIT_PPM, type DecisionRule, type Limits } from './rule';
 
 export type UnitOutcome = 'conforming' | 'notProven' | 'nonconforming';
 
@@ -63,6 +63,14 @@ function taken(rule: DecisionRule, outcome: UnitOutcome, beyond: boolean): boole
   return rule.kind === 'guardedAcceptance' ? outcome === 'conforming' : outcome !== 'nonconforming';
 }
 
+/** What isBeyond compares with, worked out once for a whole lot. */
+function edges({ lowPpm, highPpm }: Limits): { low: number; high: number } {
+  return {
+    low: lowPpm === null ? -Infinity : lowPpm - ON_LIMIT_PPM,
+    high: highPpm === null ? Infinity : highPpm + ON_LIMIT_PPM,
+  };
+}
+
 export interface VerdictCounts {
   units: number;
   conforming: number;
@@ -86,19 +94,20 @@ export function countVerdicts(
 ): VerdictCounts {
   requireLimits(limits);
   const width = guardBandPpm(rule, expandedUncertaintyPpm);
-  const outer = moved(limits, width);
-  const inner = moved(limits, -width);
+  const given = edges(limits);
+  const outer = edges(moved(limits, width));
+  const inner = edges(moved(limits, -width));
   let [beyond, nonconforming, notConforming, notProvenOutside] = [0, 0, 0, 0];
-  // No object for each unit: a lot may hold a million.
+  // Plain numbers and no object for each unit: a lot may hold a million.
   for (let index = 0; index < offsetsPpm.length; index += 1) {
     const offsetPpm = offsetsPpm[index]!;
-    requireFinite(offsetPpm, 'offsetsPpm');
-    const isOut = isBeyond(offsetPpm, limits);
-    const isProven = isBeyond(offsetPpm, outer);
+    if (!Number.isFinite(offsetPpm)) requireFinite(offsetPpm, 'offsetsPpm');
+    const isOut = offsetPpm < given.low || offsetPpm > given.high;
+    const isProven = offsetPpm < outer.low || offsetPpm > outer.high;
     if (isOut) beyond += 1;
     if (isProven) nonconforming += 1;
     else if (isOut) notProvenOutside += 1;
-    if (isProven || isBeyond(offsetPpm, inner)) notConforming += 1;
+    if (isProven || offsetPpm < inner.low || offsetPpm > inner.high) notConforming += 1;
   }
   const units = offsetsPpm.length;
   const refused = {

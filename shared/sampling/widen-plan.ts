@@ -17,8 +17,11 @@ export function widenPlan(plan: SamplingPlan, unitsMeasured: number): SamplingPl
   if (plan.kind !== 'attribute' || unitsMeasured <= plan.tableSampleSize) return plan;
   const share = plan.aqlPercent / 100;
   const wanted = binomialCdf(plan.rejectionNumber - 1, plan.tableSampleSize, share);
-  let acceptanceNumber = plan.acceptanceNumber;
-  while (binomialCdf(acceptanceNumber, unitsMeasured, share) < wanted) acceptanceNumber += 1;
+  const acceptanceNumber = leastCount(
+    plan.acceptanceNumber,
+    unitsMeasured,
+    (count) => binomialCdf(count, unitsMeasured, share) >= wanted,
+  );
   const widened = {
     ...plan,
     sampleSize: unitsMeasured,
@@ -27,4 +30,16 @@ export function widenPlan(plan: SamplingPlan, unitsMeasured: number): SamplingPl
     everyUnit: unitsMeasured >= plan.lotSize,
   };
   return { ...widened, description: describePlan(widened) };
+}
+
+/** The least whole number from `from` to `to` for which a condition holds that stays once it holds; it holds at `to`. */
+function leastCount(from: number, to: number, holds: (count: number) => boolean): number {
+  let low = from;
+  let high = to;
+  while (low < high) {
+    const middle = Math.floor((low + high) / 2);
+    if (holds(middle)) high = middle;
+    else low = middle + 1;
+  }
+  return low;
 }

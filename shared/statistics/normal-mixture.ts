@@ -22,6 +22,8 @@ interface Reduced {
 
 const GROUPS = 512;
 const MOST_STEPS = 200;
+/** So many factors of at most 2 stay far from overflow. */
+const MOST_FACTORS = 512;
 const LOG_ROOT_TWO_PI = 0.5 * Math.log(2 * Math.PI);
 
 /**
@@ -113,6 +115,11 @@ function expect(
   const weightA = -0.5 / (a.sd * a.sd);
   const weightB = -0.5 / (b.sd * b.sd);
   let sum = 0;
+  // Groups hold one of two counts, so the logarithms of a count can be taken of the product of its terms, each from 1 to 2.
+  const fewest = counts[0]!;
+  const others = counts.find((count) => count !== fewest) ?? fewest;
+  let ofFewest = 1;
+  let ofOthers = 1;
   for (let i = 0; i < means.length; i += 1) {
     const da = means[i]! - a.mean;
     const db = means[i]! - b.mean;
@@ -121,7 +128,14 @@ function expect(
     const lb = logB + weightB * (db * db + inner);
     const top = la > lb ? la : lb;
     const rest = Math.exp(la > lb ? lb - la : la - lb);
-    sum += counts[i]! * (top + Math.log1p(rest));
+    sum += counts[i]! * top;
+    if (counts[i]! === fewest) ofFewest *= 1 + rest;
+    else ofOthers *= 1 + rest;
+    if (i % MOST_FACTORS === MOST_FACTORS - 1 || i === means.length - 1) {
+      sum += fewest * Math.log(ofFewest) + others * Math.log(ofOthers);
+      ofFewest = 1;
+      ofOthers = 1;
+    }
     firstShare[i] = la > lb ? 1 / (1 + rest) : rest / (1 + rest);
   }
   return sum;
