@@ -1,4 +1,5 @@
 import { handleDigest } from './digest';
+import { handleNightly } from './nightly';
 import { handleReminders } from './reminders';
 
 const minuteMs = 60_000;
@@ -6,7 +7,7 @@ const minuteMs = 60_000;
 const digestHours = { from: 6, to: 12 };
 
 /**
- * What the time of day brings: reminders every minute, digests in the morning. Each worker keeps its own clock; the
+ * What the time of day brings: reminders every minute, digests in the morning, checks at night. Each worker keeps its own clock; the
  * rows are locked and judged again before anything is sent, so that two clocks never do the same thing twice.
  */
 export function startClock(report: (error: unknown) => void = () => undefined, everyMs = minuteMs) {
@@ -28,4 +29,5 @@ export async function atMinute(now: Date): Promise<void> {
   await handleReminders(now);
   const hour = now.getUTCHours();
   if (hour >= digestHours.from && hour < digestHours.to) await handleDigest(now);
+  await handleNightly(now);
 }

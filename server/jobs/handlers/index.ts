@@ -3,6 +3,7 @@ import { handleAnalyse } from './analyse';
 import { handleDigest } from './digest';
 import { handleIngest } from './ingest';
 import { handleMail } from './mail';
+import { handleNightly } from './nightly';
 import { handleReminders } from './reminders';
 
 export interface Handler {
@@ -21,4 +22,5 @@ export const handlers: Handler[] = [
   { queue: queues.mail, atOnce: 1, handle: () => handleMail() },
   { queue: queues.reminders, atOnce: 1, handle: async () => void (await handleReminders()) },
   { queue: queues.digest, atOnce: 1, handle: async () => void (await handleDigest()) },
+  { queue: queues.nightly, atOnce: 1, handle: async () => void (await handleNightly()) },
 ];

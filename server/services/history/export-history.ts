@@ -28,6 +28,10 @@ export async function* historyRows(filter: Filter): AsyncGenerator<HistoryRow[]>
 async function manifestOf(filter: Filter) {
   const { sql, values } = historyConditions(filter);
   const { pool } = database();
+  // Read before the entries are counted: a checkpoint made in between would seem to count entries that are missing.
+  const { rows: checkpoints } = await pool.query(
+    'SELECT count, head, at, signature, public_key FROM history_checkpoints ORDER BY count',
+  );
   const { rows } = await pool.query<{
     count: string;
     first_hash: string | null;
@@ -39,9 +43,6 @@ async function manifestOf(filter: Filter) {
             (array_agg(s.hash ORDER BY s.sequence))[1] AS first_hash, (array_agg(s.hash ORDER BY s.sequence DESC))[1] AS last_hash
      ${historyJoins} WHERE ${sql}`,
     values,
-  );
-  const { rows: checkpoints } = await pool.query(
-    'SELECT count, head, at, signature, public_key FROM history_checkpoints ORDER BY count',
   );
   const row = rows[0]!;
   return {
