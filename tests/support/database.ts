@@ -28,7 +28,11 @@ export interface TestDatabase {
 }
 
 export async function createTestDatabase(): Promise<TestDatabase> {
-  const template = await migratedTemplate();
+  return copyOfTemplate(await migratedTemplate());
+}
+
+/** A database of its own that begins as the template is. */
+export async function copyOfTemplate(template: string): Promise<TestDatabase> {
   const name = `test_${process.pid}_${randomBytes(5).toString('hex')}`;
   await ensureDatabase(serverUrl('TEST_ADMIN_URL'), name, template);
   return testDatabase(name);
@@ -54,7 +58,7 @@ function testDatabase(name: string): TestDatabase {
   };
 }
 
-function serverUrl(variable: (typeof clusterVariables)[number]): string {
+export function serverUrl(variable: (typeof clusterVariables)[number]): string {
   const url = process.env[variable];
   if (!url) {
     throw new Error(
@@ -67,23 +71,34 @@ function serverUrl(variable: (typeof clusterVariables)[number]): string {
 let template: Promise<string> | undefined;
 
 /** Named by the migrations' contents, so that a changed migration makes a new one. */
-function migratedTemplate(): Promise<string> {
+export function migratedTemplate(): Promise<string> {
   template ??= buildTemplate();
   return template;
 }
 
 async function buildTemplate(): Promise<string> {
-  const adminUrl = serverUrl('TEST_ADMIN_URL');
   const name = `template_${schemaMark()}`;
+  await ensureTemplate(name, undefined, async (draft) => {
+    await migrate(onDatabase(serverUrl('TEST_OWNER_URL'), draft));
+  });
+  return name;
+}
+
+/** Makes a template by copying `from` (or from nothing) and filling the copy; whoever else wants it at the same moment waits. */
+export async function ensureTemplate(
+  name: string,
+  from: string | undefined,
+  fill: (draft: string) => Promise<void>,
+): Promise<void> {
+  const adminUrl = serverUrl('TEST_ADMIN_URL');
   await withClient(adminUrl, async (client) => {
-    // Several test files want it at the same moment; one builds, the others wait.
-    await client.query(`SELECT pg_advisory_lock(hashtext('quartzhold test template'))`);
+    await client.query('SELECT pg_advisory_lock(hashtext($1))', [`quartzhold test ${name}`]);
     const known = await client.query('SELECT 1 FROM pg_database WHERE datname = $1', [name]);
     if (known.rowCount) return;
     const draft = `${name}_draft`;
     await client.query(`DROP DATABASE IF EXISTS "${draft}" WITH (FORCE)`);
-    await ensureDatabase(adminUrl, draft);
-    await migrate(onDatabase(serverUrl('TEST_OWNER_URL'), draft));
+    await ensureDatabase(adminUrl, draft, from);
+    await fill(draft);
     await client.query(
       'SELECT pg_terminate_backend(pid) FROM pg_stat_activity WHERE datname = $1',
       [draft],
@@ -92,16 +107,19 @@ async function buildTemplate(): Promise<string> {
     // A template that somebody is connected to cannot be copied.
     await client.query(`ALTER DATABASE "${name}" ALLOW_CONNECTIONS false`);
   });
-  return name;
 }
 
 /** What the shape of a migrated database depends on. */
 const schemaSources = ['server/migrations', 'server/database', 'server/jobs/queues.ts'];
 
 function schemaMark(): string {
+  return markOf(schemaSources);
+}
+
+/** Changes with the contents of these files and folders. */
+export function markOf(places: readonly string[]): string {
   const hash = createHash('sha256');
-  for (const file of schemaSources.flatMap(filesUnder))
-    hash.update(file).update(readFileSync(file));
+  for (const file of places.flatMap(filesUnder)) hash.update(file).update(readFileSync(file));
   return hash.digest('hex').slice(0, 16);
 }
 
