@@ -113,7 +113,11 @@ export async function startServer(changes: NodeJS.ProcessEnv = {}): Promise<Test
 /** A copy of the build, so that another build in the meantime does not pull the pages from under the test. */
 function layOut(database: DemoDatabase): string {
   const folder = mkdtempSync(join(tmpdir(), 'quartzhold-test-server-'));
-  cpSync(join(checkoutFolder, 'dist'), join(folder, 'dist'), { recursive: true });
+  cpSync(join(checkoutFolder, 'dist'), join(folder, 'dist'), {
+    recursive: true,
+    // The mark of a build that runs meanwhile comes and goes.
+    filter: (source) => !source.endsWith('.lock'),
+  });
   for (const name of ['node_modules', 'server', 'package.json'])
     symlinkSync(join(checkoutFolder, name), join(folder, name));
   database.layOutside(join(folder, 'outside'));
