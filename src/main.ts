@@ -1,6 +1,7 @@
 import { createApp } from 'vue';
 import { createPinia } from 'pinia';
 import { VueQueryPlugin } from '@tanstack/vue-query';
+import { readSignsFrom } from '@shared/format/signs';
 import './styles/fonts.css';
 import './styles/tokens.css';
 import './styles/base.css';
@@ -14,7 +15,8 @@ import { usePreferences } from './stores/preferences';
 
 const app = createApp(App);
 app.use(createPinia());
-usePreferences();
+const preferences = usePreferences();
+readSignsFrom(() => preferences.numberSigns);
 app.use(i18n);
 app.use(VueQueryPlugin, { queryClient: makeQueryClient() });
 app.use(makeRouter());

@@ -1,3 +1,5 @@
+import { numberSigns } from './signs';
+
 /** U+2212, as wide as the plus sign. */
 export const MINUS = '\u2212';
 
@@ -14,7 +16,8 @@ export interface NumberOptions {
 }
 
 /**
- * A number as people read it: point as decimal sign, commas between thousands from 1,000 on, U+2212 as minus.
+ * A number as people read it, with the signs of the person's setting (see signs.ts; a point, and commas between
+ * thousands from 1,000 on, unless told otherwise) and U+2212 as minus.
  * Never minus nought, never exponents. A missing or non-finite value is an en dash.
  */
 export function formatNumber(
@@ -41,9 +44,10 @@ export function placesFor(magnitude: number, significant: number): number {
 
 /** '10000012.20' becomes '10,000,012.20'; the fraction is left as it is. */
 export function groupThousands(digits: string): string {
+  const { decimal, group } = numberSigns();
   const [whole = '', fraction] = digits.split('.');
-  const grouped = whole.replace(/\B(?=(\d{3})+$)/g, ',');
-  return fraction === undefined ? grouped : `${grouped}.${fraction}`;
+  const grouped = whole.replace(/\B(?=(\d{3})+$)/g, group);
+  return fraction === undefined ? grouped : grouped + decimal + fraction;
 }
 
 function trimZeros(digits: string): string {

@@ -9,6 +9,8 @@ export type ParsedNumber =
 export interface ParseOptions {
   /** Settles the decimal sign when the writer's habit is known, e.g. from the other rows of a column. */
   decimalSign?: '.' | ',';
+  /** The decimal sign of the writer's locale: it settles what could be read twice and nothing else. */
+  usualSign?: '.' | ',';
 }
 
 const refuse = (message: string): ParsedNumber => ({ ok: false, message });
@@ -17,9 +19,12 @@ const refuse = (message: string): ParsedNumber => ({ ok: false, message });
  * A number as people type it, with a point or a comma as decimal sign, spaces, apostrophes or the other sign
  * between thousands, U+2212 or a hyphen as minus, and an exponent if wanted.
  * One point is a decimal point. One comma followed by exactly three digits ('1,234') could be either and is
- * refused, as is any grouping that is not in threes ('1.234,5,6').
+ * refused unless the writer is known to use a decimal comma, as is any grouping that is not in threes ('1.234,5,6').
  */
-export function parseNumber(text: string, { decimalSign }: ParseOptions = {}): ParsedNumber {
+export function parseNumber(
+  text: string,
+  { decimalSign, usualSign }: ParseOptions = {},
+): ParsedNumber {
   const cleaned = text
     .trim()
     .replace(/^[\u2212\u2013]/, '-')
@@ -32,7 +37,9 @@ export function parseNumber(text: string, { decimalSign }: ParseOptions = {}): P
   const [, sign = '', written = '', exponent] = match;
   const body = dropSpaceGroups(written);
   if (body === null) return refuse(`The digits of “${text.trim()}” are not grouped in threes.`);
-  const plain = settleSigns(body, decimalSign);
+  const settled = settleSigns(body, decimalSign);
+  // A point says nothing new: it is what makes '1,234' readable twice. Only a habit of commas settles it.
+  const plain = settled === 'ambiguous' && usualSign === ',' ? settleSigns(body, ',') : settled;
   if (plain === 'ambiguous') {
     const [bare, pointed] = [body.replace(',', ''), body.replace(',', '.')];
     return refuse(

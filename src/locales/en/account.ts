@@ -55,4 +55,12 @@ export default {
     note: 'on this machine',
     legend: 'Light or dark',
   },
+  signs: {
+    heading: 'Numbers',
+    note: 'on this machine',
+    legend: 'Decimal sign',
+    choices: { system: 'as the browser', point: 'decimal point', comma: 'decimal comma' },
+    example:
+      'Written like this: {example}. Fields take both signs. Mails, reports and sentences of the record keep the decimal point.',
+  },
 };
