@@ -447,12 +447,15 @@ function uncertaintyOfMean(
   { bench, lotSize }: AnalysisCriteria,
 ): number | null {
   if (!bench || lot.sdPpm === null || lot.units < 2) return null;
+  const timeBaseStandardPpm = bench.expandedUncertaintyPpm / bench.coverageFactor;
+  // A lot without spread leaves the time base alone.
+  if (lot.sdPpm === 0) return timeBaseStandardPpm;
   return lotMeanUncertainty({
     sessions: [
       {
         units: lot.units,
         timeBase: bench.name,
-        timeBaseStandardPpm: bench.expandedUncertaintyPpm / bench.coverageFactor,
+        timeBaseStandardPpm,
       },
     ],
     spreadPpm: lot.sdPpm,

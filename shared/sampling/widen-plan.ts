@@ -24,6 +24,8 @@ export function widenPlan(plan: SamplingPlan, unitsMeasured: number): SamplingPl
   );
   const widened = {
     ...plan,
+    // More units measured than were registered: the lot holds at least those.
+    lotSize: Math.max(plan.lotSize, unitsMeasured),
     sampleSize: unitsMeasured,
     acceptanceNumber,
     rejectionNumber: acceptanceNumber + 1,

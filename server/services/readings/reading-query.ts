@@ -1,6 +1,7 @@
 import { QueryTypes } from 'sequelize';
 import { type z } from 'zod';
 import { type ReadingFilter } from '@shared/contract/lots';
+import { ON_LIMIT_PPM } from '@shared/decision/rule';
 import { database } from '../../database/connection';
 import { likePattern } from '../../database/keyset';
 import { type Lot, PartRevision, Upload } from '../../models';
@@ -118,8 +119,9 @@ function select(
         pattern: filter.serial ? likePattern(filter.serial).slice(1) : '',
         lotId: scope.lot.id,
         nominal: scope.nominalHz,
-        low: lowPpm,
-        high: highPpm,
+        // A value on a limit conforms, as everywhere.
+        low: lowPpm === null ? null : lowPpm - ON_LIMIT_PPM,
+        high: highPpm === null ? null : highPpm + ON_LIMIT_PPM,
         limit,
       },
       type: QueryTypes.SELECT,
