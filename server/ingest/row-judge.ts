@@ -79,6 +79,8 @@ export class RowJudge {
   private readonly offset;
   private readonly instants = new InstantReader();
   private readonly series: boolean;
+  /** Numbers with a decimal point can be taken as bytes; with a comma they are read as text, where a point means something else. */
+  private readonly pointed: boolean;
   private expected: number;
   private readonly delimiter: string;
   private readonly startedAtMicros: number;
@@ -112,6 +114,7 @@ export class RowJudge {
     };
     this.offset = makeOffsetPpm(options.nominalHz);
     this.series = mapping.shape === 'time_series';
+    this.pointed = mapping.decimalSign === '.';
     this.expected = mapping.columns.length;
     this.delimiter = mapping.delimiter;
     this.columnNames = mapping.columns.map((_, index) => `column ${index + 1}`);
@@ -351,7 +354,7 @@ export class RowJudge {
     let source = bytes;
     let from = start;
     let to = end;
-    let next = unit === 'Hz' ? writeNumeric(out, at + 4, bytes, start, end) : -1;
+    let next = unit === 'Hz' && this.pointed ? writeNumeric(out, at + 4, bytes, start, end) : -1;
     if (next === -1) {
       const plain = this.plain(bytes, start, end, field);
       const hz = unit === 'Hz' ? plain : toHzText(plain, unit as 'MHz', this.options.nominalHz);
@@ -385,7 +388,7 @@ export class RowJudge {
     const start = trimStart(bytes, bounds[2 * field]!, bounds[2 * field + 1]!);
     const end = trimEnd(bytes, start, bounds[2 * field + 1]!);
     if (start === end) return putInt32(out, at, -1);
-    let next = writeNumeric(out, at + 4, bytes, start, end);
+    let next = this.pointed ? writeNumeric(out, at + 4, bytes, start, end) : -1;
     if (next === -1) {
       const length = this.scratch.write(this.plain(bytes, start, end, field), 0, 'latin1');
       next = writeNumeric(out, at + 4, this.scratch, 0, length);
