@@ -153,7 +153,7 @@ const expected: Record<LotState | 'awaiting_second', Record<Act, string>> = {
     countersign: 'disposition.not_waiting',
     refuse_second: 'disposition.not_waiting',
     sort: 'lot.state',
-    rejudge: 'role.not_allowed',
+    rejudge: 'lot.state',
     change: 'lot.decided',
     upload: 'lot.closed',
     withdraw: 'upload.not_withdrawable',

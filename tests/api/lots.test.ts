@@ -271,7 +271,7 @@ describe('judging again by other criteria', () => {
     const lot = await inspectedLot(house, { partId: own.id });
     await decided(house.quality, lot.id, { decision: 'reject' });
     const revisionB = await nextRevision(house, own.id, 'B', today());
-    await rejudge(lot.id, { partRevisionId: revisionB }).expect(403);
+    await rejudge(lot.id, { partRevisionId: revisionB }).expect(409);
   });
 });
 

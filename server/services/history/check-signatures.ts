@@ -1,4 +1,4 @@
-import { Op } from 'sequelize';
+import { type FindOptions, Op } from 'sequelize';
 import { canonicalJson, sha256Hex } from '../../history/canonical';
 import { Analysis, Disposition, Signature } from '../../models';
 import { verifySignature } from '../signing/sign';
@@ -19,25 +19,31 @@ export async function checkSignatures(): Promise<SignatureCheck> {
   const fault = (sentence: string) => {
     if (check.faults.length < mostFaults) check.faults.push(sentence);
   };
-  await inBatches(Signature, async (signatures) => {
-    check.signaturesChecked += signatures.length;
-    for (const signature of signatures)
-      if (!verifySignature(signature))
-        fault(
-          `Signature ${signature.id} on ${signature.recordType} ${signature.recordId} does not fit what it stands on.`,
-        );
-  });
-  await inBatches(Disposition, async (dispositions) => {
-    const signatures = await Signature.findAll({
-      attributes: ['recordId', 'contentHash'],
-      where: { recordType: 'disposition', recordId: dispositions.map(({ id }) => id) },
-    });
-    for (const { id, contentHash } of dispositions)
-      if (!signatures.some((s) => s.recordId === id && s.contentHash === contentHash))
-        fault(`Decision ${id} does not carry the signature it was made with.`);
-  });
   await inBatches(
-    Analysis,
+    (page) => Signature.findAll(page),
+    async (signatures) => {
+      check.signaturesChecked += signatures.length;
+      for (const signature of signatures)
+        if (!verifySignature(signature))
+          fault(
+            `Signature ${signature.id} on ${signature.recordType} ${signature.recordId} does not fit what it stands on.`,
+          );
+    },
+  );
+  await inBatches(
+    (page) => Disposition.findAll(page),
+    async (dispositions) => {
+      const signatures = await Signature.findAll({
+        attributes: ['recordId', 'contentHash'],
+        where: { recordType: 'disposition', recordId: dispositions.map(({ id }) => id) },
+      });
+      for (const { id, contentHash } of dispositions)
+        if (!signatures.some((s) => s.recordId === id && s.contentHash === contentHash))
+          fault(`Decision ${id} does not carry the signature it was made with.`);
+    },
+  );
+  await inBatches(
+    (page) => Analysis.findAll(page),
     async (analyses) => {
       check.analysesChecked += analyses.length;
       for (const { id, resultText, resultHash, criteria, criteriaHash } of analyses)
@@ -52,18 +58,14 @@ export async function checkSignatures(): Promise<SignatureCheck> {
   return check;
 }
 
-interface Kept<Row> {
-  findAll(options: object): Promise<Row[]>;
-}
-
 async function inBatches<Row extends { id: string }>(
-  model: Kept<Row>,
+  read: (page: FindOptions) => Promise<Row[]>,
   look: (rows: Row[]) => Promise<void>,
   where: object = {},
 ): Promise<void> {
   let last: string | null = null;
   for (;;) {
-    const rows: Row[] = await model.findAll({
+    const rows: Row[] = await read({
       where: { ...where, ...(last ? { id: { [Op.gt]: last } } : {}) },
       order: ['id'],
       limit: batch,

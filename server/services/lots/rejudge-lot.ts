@@ -46,7 +46,9 @@ export async function rejudgeLot(actor: Actor, id: string, input: Rejudgement): 
             'disposition.awaiting_second',
             'A concession waits for its second signature. Sign or refuse it first.',
           )
-        : new NotAllowed('A rejected lot is not judged again.');
+        : facts.state === 'rejected'
+          ? new Conflict('lot.state', 'The lot is rejected and is not judged again.')
+          : new NotAllowed();
     }
     const revision = await PartRevision.findOne({
       where: { id: input.partRevisionId, partId: lot.partId },
