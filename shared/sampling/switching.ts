@@ -11,7 +11,7 @@ export interface SwitchingLot {
   lotSize: number;
   /** Did the sample meet the plan? Not the disposition: a concession does not make a lot good. */
   accepted: boolean;
-  /** Units found beyond the limits in the sample. */
+  /** Units of the sample that the decision rule did not take: what the plan counts. */
   beyond: number;
   /** A lot offered again after sorting does not count. */
   resubmitted?: boolean;
@@ -42,6 +42,8 @@ export interface SwitchingResult {
 export interface SwitchingOptions {
   /** Reduced inspection needs the consent of the responsible person. Default true. */
   reducedAllowed?: boolean;
+  /** The supplier's corrective action was agreed after the last lot: it ends a discontinuation. Default false. */
+  correctiveActionAgreed?: boolean;
 }
 
 export const REDUCED_FROM_SCORE = 30;
@@ -85,7 +87,7 @@ const begin = (state: InspectionState): Progress => ({
 export function switchingState(
   rule: SamplingRule,
   lots: readonly SwitchingLot[],
-  { reducedAllowed = true }: SwitchingOptions = {},
+  { reducedAllowed = true, correctiveActionAgreed = false }: SwitchingOptions = {},
 ): SwitchingResult {
   if (rule.kind === 'zeroAcceptance' || rule.kind === 'everyUnit') return oneSeverity(rule.kind);
   let progress = begin('normal');
@@ -101,6 +103,12 @@ export function switchingState(
     if (step === null) continue;
     changes.push({ afterLot: lot.lotNumber, from: progress.state, ...step });
     progress = begin(step.to);
+  }
+  const lastLot = lots.at(-1);
+  if (progress.state === 'discontinued' && correctiveActionAgreed && lastLot) {
+    const why = 'the supplier’s corrective action was agreed';
+    changes.push({ afterLot: lastLot.lotNumber, from: 'discontinued', to: 'tightened', why });
+    progress = begin('tightened');
   }
   return {
     state: progress.state,

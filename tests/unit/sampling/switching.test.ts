@@ -128,3 +128,14 @@ describe('switching', () => {
     );
   });
 });
+
+describe('corrective action agreed after the last lot', () => {
+  it('ends a discontinuation for the next lot, and nothing else', () => {
+    const agreed = { correctiveActionAgreed: true };
+    const resumed = switchingState(rule, lots('-------'), agreed);
+    expect(resumed).toMatchObject({ state: 'tightened', severity: 'tightened' });
+    expect(resumed.changes.at(-1)).toMatchObject({ afterLot: 'L7', from: 'discontinued' });
+    expect(switchingState(rule, lots('--'), agreed).changes).toHaveLength(1);
+    expect(switchingState(rule, [], agreed).state).toBe('normal');
+  });
+});
