@@ -13,6 +13,7 @@ import { benchesRoutes } from './benches';
 import { peopleRoutes } from './people';
 import { historyRoutes } from './history';
 import { mailRoutes } from './mail';
+import { keysRoutes } from './keys';
 
 const development: RouteRecordRaw[] = import.meta.env.DEV
   ? [
@@ -47,6 +48,7 @@ export function makeRouter() {
       ...peopleRoutes,
       ...historyRoutes,
       ...mailRoutes,
+      ...keysRoutes,
       ...development,
       {
         path: '/:rest(.*)*',
