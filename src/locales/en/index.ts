@@ -5,6 +5,7 @@ import account from './account';
 import work from './work';
 import lots from './lots';
 import holds from './holds';
+import criteria from './criteria';
 import parts from './parts';
 import receivers from './receivers';
 import suppliers from './suppliers';
@@ -23,6 +24,7 @@ export default {
   work,
   lots,
   holds,
+  criteria,
   parts,
   receivers,
   suppliers,

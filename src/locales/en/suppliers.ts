@@ -1,1 +1,40 @@
-export default {};
+export default {
+  title: 'Suppliers',
+  finding: 'Who delivers, who answers there, and what is open with them.',
+  find: 'Name or location',
+  active: { any: 'in use or not', true: 'in use', false: 'not in use' },
+  add: 'Add a supplier',
+  addFinding: 'Then invite a contact, so that a hold reaches somebody.',
+  change: 'Change',
+  changeTitle: 'Change {supplier}',
+  empty: 'No supplier has been added yet.',
+  emptyMore:
+    'A supplier delivers lots. Its contacts are told of a hold the same minute and answer it here; they see nothing of any other supplier.',
+  noContact: 'nobody yet',
+  column: {
+    name: 'Supplier',
+    location: 'Location',
+    contacts: 'Contacts',
+    lots: 'Lots',
+    holds: 'Open holds',
+  },
+  group: { identity: 'What it is', contacts: 'Contacts', lots: 'Lots' },
+  field: {
+    name: 'Name',
+    location: 'Location',
+    notes: 'Notes',
+    notesHint: 'For the house only; the supplier does not see them.',
+    activeHint: 'A supplier out of use takes no new lots; its old ones stay.',
+  },
+  lots: 'no lots | one lot | {count} lots',
+  holds: 'no open hold | one open hold | {count} open holds',
+  contact: {
+    note: 'hear of holds and answer',
+    name: 'Name',
+    email: 'E-mail',
+    state: 'State',
+    none: 'Nobody here can be told of a hold.',
+    noneMore: 'A hold sends its notice to the contacts of the supplier. Invite one.',
+    invite: 'Invite a contact',
+  },
+};
