@@ -305,6 +305,33 @@ describe('acceptance under concession', () => {
   });
 });
 
+describe('the lots as CSV', () => {
+  it('carry the decision that counts with name, time, zone, meaning, reason and hash of its signatures', async () => {
+    const lot = await inspected();
+    const { id } = await decided(house.quality, lot.id, { decision: 'accept_under_concession' });
+    expect((await countersigned(house.quality2, id)).status).toBe(201);
+    const { text } = await house.auditor
+      .get('/api/lots.csv')
+      .query({ find: lot.lotNumber })
+      .expect(200);
+    const [head, row] = text.replace(/^\ufeff/, '').split(/\r?\n/);
+    expect(head).toMatch(
+      /finding,decision,signed_by,signed_at,signed_zone,signature_meaning,signature_reason,signature_sha256/,
+    );
+    const [first, second] = await Signature.findAll({
+      where: { recordId: id },
+      order: ['signedAt'],
+    });
+    for (const cell of [
+      'accept_under_concession',
+      'Quentin Quality; Quirina Quality',
+      `${first!.signedAt.toISOString()}; ${second!.signedAt.toISOString()}`,
+      `${first!.contentHash}; ${second!.contentHash}`,
+    ])
+      expect(row).toContain(cell);
+  });
+});
+
 describe('after a hold', () => {
   it('a lot is accepted only when it was inspected again and the correction is named', async () => {
     const lot = await inspected(spread(10, 9, 2));
