@@ -7,6 +7,7 @@ const appendOnly = [
   'signatures',
   'hold_messages',
   'attachments',
+  'concession_files',
   'upload_chunks',
   'readings',
   'refused_rows',

@@ -8,6 +8,7 @@ import { uploadHeadings } from './010-upload-headings';
 import { holdRecords } from './020-hold-records';
 import { owedResistance } from './030-owed-resistance';
 import { nightlyRuns } from './031-nightly-runs';
+import { concessionFiles } from './040-concession-files';
 import { type Migration } from './migration';
 
 /** In order. A step that has run anywhere is never edited; a change is a new step. */
@@ -22,4 +23,5 @@ export const migrations: Migration[] = [
   holdRecords,
   owedResistance,
   nightlyRuns,
+  concessionFiles,
 ];

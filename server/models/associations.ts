@@ -1,4 +1,5 @@
 import { Attachment } from './attachment';
+import { ConcessionFile } from './concession-file';
 import { Bench } from './bench';
 import { Disposition } from './disposition';
 import { Analysis } from './analysis';
@@ -65,6 +66,8 @@ export function associate(): void {
   Disposition.belongsTo(Lot, { as: 'lot', foreignKey: 'lotId' });
   Disposition.belongsTo(Analysis, { as: 'analysis', foreignKey: 'analysisId' });
   Disposition.belongsTo(Person, { as: 'signer', foreignKey: 'signedBy' });
+
+  ConcessionFile.belongsTo(Person, { as: 'sender', foreignKey: 'sentBy' });
 
   Hold.belongsTo(Lot, { as: 'lot', foreignKey: 'lotId' });
   Hold.belongsTo(Supplier, { as: 'supplier', foreignKey: 'supplierId' });

@@ -20,6 +20,7 @@ import { Disposition } from './disposition';
 import { Hold } from './hold';
 import { HoldMessage } from './hold-message';
 import { Attachment } from './attachment';
+import { ConcessionFile } from './concession-file';
 import { Mail } from './mail';
 import { HistoryEntry } from './history-entry';
 import { HistoryPersonal } from './history-personal';
@@ -49,6 +50,7 @@ const models = [
   Hold,
   HoldMessage,
   Attachment,
+  ConcessionFile,
   Mail,
   HistoryEntry,
   HistoryPersonal,
@@ -83,6 +85,7 @@ export {
   Hold,
   HoldMessage,
   Attachment,
+  ConcessionFile,
   Mail,
   HistoryEntry,
   HistoryPersonal,

@@ -1,13 +1,14 @@
 import { type Disposition as DispositionView } from '@shared/contract/dispositions';
-import { type Disposition, type Lot, type Signature } from '../models';
+import { type ConcessionFile, type Disposition, type Lot, type Signature } from '../models';
 import { presentSignature } from './signature';
 
-/** Expects `analysis` and `signer` loaded. */
+/** Expects `analysis` and `signer` loaded, and `sender` of the approvals. */
 export function presentDisposition(
   disposition: Disposition,
   lot: Lot,
   signatures: Signature[],
   holdId: string | null,
+  approvals: ConcessionFile[],
 ): DispositionView {
   return {
     id: disposition.id,
@@ -27,5 +28,14 @@ export function presentDisposition(
     signedAt: disposition.signedAt.toISOString(),
     signedBy: { id: disposition.signedBy, name: disposition.signer?.name ?? '' },
     holdId,
+    customerApprovals: approvals.map((file) => ({
+      id: file.id,
+      fileName: file.fileName,
+      mediaType: file.mediaType,
+      byteCount: file.byteCount,
+      sha256: file.sha256,
+      sentBy: { id: file.sentBy, name: file.sender?.name ?? '' },
+      sentAt: file.sentAt.toISOString(),
+    })),
   };
 }

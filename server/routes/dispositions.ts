@@ -1,5 +1,10 @@
 import * as contract from '@shared/contract/dispositions';
 import { route } from '../http/route';
+import { sendAttachment } from '../http/send-attachment';
+import {
+  addCustomerApproval,
+  readCustomerApproval,
+} from '../services/dispositions/customer-approval';
 import { writeCertificate } from '../services/dispositions/read-certificate';
 import {
   readContainment,
@@ -9,6 +14,7 @@ import {
 import { countersign, refuseSecond } from '../services/dispositions/second-signature';
 import { signDisposition } from '../services/dispositions/sign-disposition';
 import { sortLot } from '../services/dispositions/sort-lot';
+import { evidenceOf, evidenceParser } from '../services/holds/evidence-parser';
 
 export const dispositionRoutes = [
   route(contract.listDispositions, ({ params }) => readDispositions(params.id)),
@@ -23,6 +29,17 @@ export const dispositionRoutes = [
     await refuseSecond(actor, params.id, body.reason);
     return readDisposition(params.id);
   }),
+  route(
+    contract.addCustomerApproval,
+    async ({ actor, params, request }) => {
+      await addCustomerApproval(actor, params.id, evidenceOf(request));
+      return readDisposition(params.id);
+    },
+    evidenceParser,
+  ),
+  route(contract.downloadCustomerApproval, async ({ params, response }) =>
+    sendAttachment(response, await readCustomerApproval(params.id, params.fileId)),
+  ),
   route(contract.proposeContainment, ({ params }) => readContainment(params.id)),
   route(contract.readCertificate, ({ params, query, response }) =>
     writeCertificate(params.id, query.dispositionId, response),

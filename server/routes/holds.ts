@@ -1,5 +1,6 @@
 import * as contract from '@shared/contract/holds';
 import { route } from '../http/route';
+import { sendAttachment } from '../http/send-attachment';
 import { acknowledgeHold } from '../services/holds/acknowledge-hold';
 import { answerHold } from '../services/holds/answer-hold';
 import { evidenceOf, evidenceParser } from '../services/holds/evidence-parser';
@@ -31,13 +32,6 @@ export const holdRoutes = [
   ),
   route(contract.downloadAttachment, async ({ actor, params, response }) => {
     const file = await readAttachment(actor, params.id, params.attachmentId);
-    // Never shown inside a page of ours, whatever it contains.
-    response.attachment(file.fileName);
-    response.set({
-      'Content-Type': 'application/octet-stream',
-      'Content-Security-Policy': "sandbox; default-src 'none'",
-      'X-Content-Type-Options': 'nosniff',
-    });
-    response.send(file.bytes);
+    sendAttachment(response, file);
   }),
 ];

@@ -60,6 +60,18 @@ export const SignDisposition = SigningFields.extend({
 });
 export type SignDisposition = z.infer<typeof SignDisposition>;
 
+/** A file that a customer sent to approve a concession. */
+export const CustomerApproval = z.object({
+  id: Id,
+  fileName: z.string(),
+  mediaType: z.string(),
+  byteCount: z.number().int(),
+  sha256: z.string(),
+  sentBy: PersonRef,
+  sentAt: Instant,
+});
+export type CustomerApproval = z.infer<typeof CustomerApproval>;
+
 export const Disposition = z.object({
   id: Id,
   lotId: Id,
@@ -79,6 +91,7 @@ export const Disposition = z.object({
   signedAt: Instant,
   signedBy: PersonRef,
   holdId: Id.nullable(),
+  customerApprovals: z.array(CustomerApproval),
 });
 export type Disposition = z.infer<typeof Disposition>;
 
@@ -118,6 +131,24 @@ export const refuseDisposition = endpoint({
   summary: 'Refuse the second signature with a reason, or take back one’s own first one',
   body: z.object({ reason: z.string().trim().min(3, 'Say why.').max(4000) }),
   answer: Disposition,
+});
+export const addCustomerApproval = endpoint({
+  method: 'post',
+  path: '/api/dispositions/:id/customer-approval',
+  roles: ['quality_engineer'],
+  params: IdParams,
+  summary: 'Keep with a concession what the customer sent to approve it; multipart',
+  files: ['files'],
+  answer: Disposition,
+  status: 201,
+});
+export const downloadCustomerApproval = endpoint({
+  method: 'get',
+  path: '/api/dispositions/:id/customer-approval/:fileId',
+  roles: houseRoles,
+  params: z.object({ id: Id, fileId: Id }),
+  summary: 'A customer’s approval, as an attachment',
+  produces: 'application/octet-stream',
 });
 export const proposeContainment = endpoint({
   method: 'get',

@@ -16,6 +16,15 @@ export const countersign = (id: string, body: BodyInput<typeof contract.counters
 export const refuseSecond = (id: string, reason: string) =>
   call(contract.refuseDisposition, { params: { id }, body: { reason } });
 
+export function addCustomerApproval(id: string, files: readonly File[]) {
+  const form = new FormData();
+  for (const file of files) form.append('files', file, file.name);
+  return call(contract.addCustomerApproval, { params: { id }, form });
+}
+
+export const customerApprovalAddress = (id: string, fileId: string) =>
+  addressOf(contract.downloadCustomerApproval, { params: { id, fileId } });
+
 export const proposeContainment = (lotId: string, signal?: AbortSignal) =>
   call(contract.proposeContainment, { params: { id: lotId }, signal });
 

@@ -293,6 +293,7 @@ export function dispositionFixture(
     signedAt: at,
     signedBy: quality,
     holdId: null,
+    customerApprovals: [],
     ...changes,
     signatures: changes.signatures ?? [
       {

@@ -1,6 +1,6 @@
 import { type Disposition as DispositionView } from '@shared/contract/dispositions';
 import { NotFound } from '../../http/errors';
-import { Analysis, Disposition, Hold, Lot, Signature } from '../../models';
+import { Analysis, ConcessionFile, Disposition, Hold, Lot, Signature } from '../../models';
 import { presentDisposition } from '../../presenters/disposition';
 
 export async function readDispositions(
@@ -14,9 +14,15 @@ export async function readDispositions(
     order: [['number', 'DESC']],
   });
   const ids = dispositions.map((d) => d.id);
-  const [signatures, holds] = await Promise.all([
+  const [signatures, holds, approvals] = await Promise.all([
     Signature.findAll({ where: { recordType: 'disposition', recordId: ids }, order: ['signedAt'] }),
     Hold.findAll({ where: { dispositionId: ids }, attributes: ['id', 'dispositionId'] }),
+    ConcessionFile.findAll({
+      where: { dispositionId: ids },
+      attributes: { exclude: ['bytes'] },
+      include: [{ association: 'sender', attributes: ['name'] }],
+      order: ['sentAt', 'id'],
+    }),
   ]);
   return {
     items: dispositions.map((d) =>
@@ -25,6 +31,7 @@ export async function readDispositions(
         lot,
         signatures.filter((s) => s.recordId === d.id),
         holds.find((hold) => hold.dispositionId === d.id)?.id ?? null,
+        approvals.filter((file) => file.dispositionId === d.id),
       ),
     ),
     next: null,

@@ -6,6 +6,7 @@ import { Analysis, Disposition, type Lot } from '../../models';
 import { lockLot } from '../lots/find-lot';
 import { proveSigner } from '../signing/prove-signer';
 import { sign } from '../signing/sign';
+import { approvalsSeen } from './customer-approval';
 import { dispositionContent } from './disposition-content';
 import { restoreHold } from './restore-hold';
 import { changeState, closeOpenHold } from './sign-disposition';
@@ -65,6 +66,7 @@ export async function countersign(
           concession: disposition.concession ?? undefined,
         })),
         firstSignatureHash: disposition.contentHash,
+        customerApprovals: await approvalsSeen(transaction, id),
       },
     });
     const before = { state: lot.state, disposition: 'awaiting_second' };

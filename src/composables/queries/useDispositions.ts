@@ -3,6 +3,7 @@ import { useMutation, useQuery } from '@tanstack/vue-query';
 import { type BodyInput } from '@shared/contract/endpoint';
 import type * as contract from '@shared/contract/dispositions';
 import {
+  addCustomerApproval,
   countersign,
   listDispositions,
   proposeContainment,
@@ -52,5 +53,10 @@ export function useSignedActs(lotId: MaybeRefOrGetter<string>) {
     mutationFn: ({ id, reason }: { id: string; reason: string }) => refuseSecond(id, reason),
     onSuccess,
   });
-  return { sign, sort, second, refuse };
+  const approve = useMutation({
+    mutationFn: ({ id, files }: { id: string; files: readonly File[] }) =>
+      addCustomerApproval(id, files),
+    onSuccess,
+  });
+  return { sign, sort, second, refuse, approve };
 }

@@ -258,6 +258,13 @@ export default {
     correction: 'Correction: {text}',
     restsOn: 'Rests on analysis {version}',
   },
+  approval: {
+    heading: 'Approved by the customer in',
+    open: 'Add the customer’s approval',
+    add: 'Keep with the concession',
+    needed: 'Choose the file that the customer sent.',
+    done: 'The approval is kept with the concession.',
+  },
   analyses: {
     heading: 'Analyses',
     version: 'Analysis {version}',
@@ -400,6 +407,7 @@ export default {
       disposition_sign: 'Decision signed',
       disposition_countersign: 'Second signature',
       disposition_refuse: 'Second signature refused',
+      disposition_customer_approval: 'Customer’s approval added',
       disposition_take_back: 'First signature taken back',
       disposition_contain: 'Held with another lot',
       hold_acknowledge: 'Hold acknowledged',
