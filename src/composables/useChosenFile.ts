@@ -11,7 +11,7 @@ export function useChosenFile(lotId: string, file: File) {
   const error = shallowRef<unknown>(null);
   const sentBytes = ref(0);
   const uploadId = ref<string | null>(null);
-  const abort = new AbortController();
+  let abort = new AbortController();
   let latest = 0;
 
   const canSend = computed(
@@ -39,6 +39,9 @@ export function useChosenFile(lotId: string, file: File) {
     if (!canSend.value || !check.value) return;
     stage.value = 'sending';
     error.value = null;
+    sentBytes.value = 0;
+    // One that was stopped stays stopped: each sending has its own.
+    abort = new AbortController();
     try {
       const fields = {
         ...options,
