@@ -53,6 +53,14 @@ export class KeyTable {
     }
   }
 
+  clear(): void {
+    this.count = 0;
+    this.slots = FEWEST_SLOTS;
+    this.keys = new Int32Array(2 * FEWEST_SLOTS);
+    this.conditions = new Int32Array(this.withMore ? FEWEST_SLOTS : 0);
+    this.marks = new Uint8Array(this.withMore ? FEWEST_SLOTS : 0);
+  }
+
   /** Makes room for so many keys at once. */
   reserve(count: number): void {
     let slots = this.slots;

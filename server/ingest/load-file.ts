@@ -86,6 +86,7 @@ export async function loadFile(
       );
     if (suspected > 0)
       await proveDuplicates(client, [...earlier, options.uploadNumber], conditions);
+    judge.units.release();
     return { judge, readingsSha256: hash.digest('hex') };
   } catch (error) {
     await writer.abort();

@@ -70,6 +70,13 @@ export class UnitTable {
     return this.pairs.has(this.pairHigh(condition), this.pairLow(condition));
   }
 
+  /** Forgets the keys and keeps the counts: the analysis needs the memory. */
+  release(): void {
+    this.run = null;
+    this.units.clear();
+    this.pairs.clear();
+  }
+
   private leaveRun(): void {
     const { units } = this;
     units.reserve(this.run!.count);
