@@ -18,7 +18,7 @@ const collector = new UnitCollector(job.criteria.part.criteria.referenceTemperat
 offsets.forEach((offsetPpm, i) => collector.addSingle(offsetPpm, 1, i + 2));
 const units = collector.finish();
 const beforeMiB = peakMiB();
-let sorted = offsets;
+let sorted: Float64Array = offsets;
 answer({ ready: true });
 
 for (;;) {
