@@ -42,12 +42,10 @@ export function useLotFilter() {
   );
   const isFiltered = computed(() => Object.keys(valid.value).some((key) => key !== 'sort'));
 
-  const states = computed<LotState[]>({
-    get: () => lotStates.filter((state) => valid.value.state?.split(',').includes(state)),
-    set: (chosen: LotState[]) => {
-      address.state.value = chosen.join(',');
-    },
-  });
+  const states = computed<LotState[]>(() =>
+    lotStates.filter((state) => valid.value.state?.split(',').includes(state)),
+  );
+  const setStates = (chosen: LotState[]) => (address.state.value = chosen.join(','));
   const sort = computed<TableSort | null>({
     get: (): TableSort => {
       const value = valid.value.sort ?? newestFirst;
@@ -71,5 +69,5 @@ export function useLotFilter() {
 
   const clear = () => address.set({ ...defaults, sort: address.sort.value });
 
-  return { address, query, text, isFiltered, states, sort, apply, clear };
+  return { address, query, text, isFiltered, states, setStates, sort, apply, clear };
 }
