@@ -127,9 +127,9 @@ export class UnitCollector {
   finish(): MeasuredUnits {
     return {
       readings: this.readings,
-      offsetsPpm: this.offsets.slice(0, this.count),
-      uploadNumbers: this.uploads.slice(0, this.count),
-      fileLines: this.lines.slice(0, this.count),
+      offsetsPpm: this.offsets.subarray(0, this.count),
+      uploadNumbers: this.uploads.subarray(0, this.count),
+      fileLines: this.lines.subarray(0, this.count),
       unitsWithoutReference: this.withoutReference,
       unitsLackingTemperatures: this.lacking,
       temperature: this.curves.length

@@ -12,6 +12,7 @@ export const sectionsByRole: Record<Role, readonly string[]> = {
     'suppliers',
     'benches',
     'history',
+    'mail',
   ],
   supplier_contact: ['work', 'holds'],
   auditor: ['work', 'lots', 'holds', 'parts', 'receivers', 'benches', 'history', 'mail'],

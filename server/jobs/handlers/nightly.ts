@@ -3,6 +3,7 @@ import { makeCheckpoint } from '../../history/checkpoint';
 import { keepVerification } from '../../history/verifications';
 import { verifyHistory } from '../../history/verify';
 import { system } from '../../http/actor';
+import { reconcileReadings } from '../../ingest/reconcile';
 import { checkSignatures } from '../../services/history/check-signatures';
 import { raiseAlarm } from '../../services/history/raise-alarm';
 
@@ -18,7 +19,7 @@ export interface NightlyOutcome {
 }
 
 /**
- * Queue `nightly`, once a day over all workers: checks the chain and every signature, keeps the result, signs a
+ * Queue `nightly`, once a day over all workers: checks the chain, every signature and that readings and uploads agree, keeps the result, signs a
  * checkpoint if all holds together and raises the alarm if not, and clears what has expired. Null when another worker
  * did or does it.
  */
@@ -53,6 +54,9 @@ async function nightlyWork(): Promise<NightlyOutcome> {
       ? [`History entry ${chain.firstBroken.sequence}: ${chain.firstBroken.reason}.`]
       : []),
     ...misfits,
+    ...(await reconcileReadings(database().pool)).map(
+      ({ uploadNumber, reason }) => `Readings of upload ${uploadNumber}: ${reason}.`,
+    ),
   ];
   const ok = faults.length === 0;
   if (!ok) await raiseAlarm(faults);

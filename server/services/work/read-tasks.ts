@@ -1,6 +1,7 @@
 import { QueryTypes } from 'sequelize';
 import { type MyWork } from '@shared/contract/work';
 import { countOf } from '@shared/format/counts';
+import { date } from '@shared/format/dates';
 import { type Actor } from '../../http/actor';
 import { Person } from '../../models';
 
@@ -41,8 +42,8 @@ async function upkeep(): Promise<Task[]> {
   return [
     ...due.map((bench) => ({
       text: bench.overdue
-        ? `${bench.name}: calibration was due on ${bench.calibration_due}`
-        : `${bench.name}: calibration due on ${bench.calibration_due}`,
+        ? `${bench.name}: calibration was due on ${date(bench.calibration_due)}`
+        : `${bench.name}: calibration due on ${date(bench.calibration_due)}`,
       to: `/benches/${bench.id}`,
       since: null,
       overdue: bench.overdue,
