@@ -95,7 +95,8 @@ describe('bringing readings in', () => {
       expect(await page.getByRole('progressbar').getAttribute('aria-valuenow')).toBe('100');
       await client.query('ROLLBACK');
     });
-    await page.getByText('20 of 20 rows taken, 0 refused.').waitFor();
+    const onTheWay = page.getByRole('region', { name: 'On the way' });
+    await onTheWay.getByText('20 of 20 rows taken, 0 refused.').waitFor();
     await page.getByText('20 of 20 units measured').waitFor();
     await page.context().close();
   });
