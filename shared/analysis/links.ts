@@ -3,6 +3,7 @@ import { type LinkShares as LinkSharesView } from '../contract/analysis';
 import { type PartCriteria } from '../contract/parts';
 import { dopplerPpm } from '../radio/doppler';
 import { frequencyBudget } from '../radio/budget';
+import { type FarEnd } from '../radio/far-end';
 import { linkShares } from '../radio/links';
 import { matchedFilterLoss } from '../radio/matched-filter';
 import { receiverAllowance, type Receiver } from '../radio/allowance';
@@ -15,14 +16,10 @@ type LinksView = z.infer<typeof LinkSharesView>;
 /** A far end called normal has its tolerance taken as three standard deviations: a convention, said wherever it is used. */
 const NORMAL_FAR_END_DEVIATIONS = 3;
 
-function farEndOf({ farEndModel, farEndTolerancePpm }: JudgingReceiver['criteria']) {
+function farEndOf({ farEndModel, farEndTolerancePpm }: JudgingReceiver['criteria']): FarEnd {
   return farEndModel === 'normal' && farEndTolerancePpm > 0
-    ? ({
-        model: 'normal',
-        meanPpm: 0,
-        sdPpm: farEndTolerancePpm / NORMAL_FAR_END_DEVIATIONS,
-      } as const)
-    : ({ model: 'uniform', tolerancePpm: farEndTolerancePpm } as const);
+    ? { model: 'normal', meanPpm: 0, sdPpm: farEndTolerancePpm / NORMAL_FAR_END_DEVIATIONS }
+    : { model: 'uniform', tolerancePpm: farEndTolerancePpm };
 }
 
 /** What each receiver makes of links with these units, strictest first. @param sortedPpm ascending */
@@ -37,11 +34,35 @@ export function judgeLinks(
   return judged.map((links, index) => ({ ...links, strictest: index === 0 }));
 }
 
+/**
+ * The same for one receiver with another measured lot at the far end, in place of the tolerance that the receiver names:
+ * every pair of units counts. @param sortedPpm, farEndPpm ascending, at least one
+ */
+export function judgeLinksWithLot(
+  sortedPpm: Float64Array,
+  part: PartCriteria,
+  receiver: JudgingReceiver,
+  farEndPpm: Float64Array,
+): LinksView {
+  return judgeLink(sortedPpm, part, receiver, false, {
+    model: 'measured',
+    offsetsPpm: farEndPpm,
+  });
+}
+
+/** The farthest that a far end can be off, ppm. */
+function farEndReachPpm(farEnd: FarEnd, tolerancePpm: number): number {
+  if (farEnd.model !== 'measured') return tolerancePpm;
+  const { offsetsPpm } = farEnd;
+  return Math.max(Math.abs(offsetsPpm[0]!), Math.abs(offsetsPpm[offsetsPpm.length - 1]!));
+}
+
 function judgeLink(
   sortedPpm: Float64Array,
   part: PartCriteria,
   { receiverId, revisionId, name, criteria }: JudgingReceiver,
   wholeLot: boolean,
+  farEnd: FarEnd = farEndOf(criteria),
 ): LinksView {
   const receiver = radioReceiver(criteria);
   const allowance = receiverAllowance(receiver, partDrift(part, receiver.serviceLifeYears));
@@ -53,7 +74,7 @@ function judgeLink(
     .reduce((sum, c) => sum + c.halfWidthPpm, 0);
   const shares = linkShares({
     unitsPpm: sortedPpm,
-    farEnd: farEndOf(criteria),
+    farEnd,
     doppler: { model: 'worst-case', halfWidthPpm },
     serviceDriftPpm,
     symbolRateRegionPpm: boundsPpm.symbolRateRegionPpm,
@@ -61,7 +82,12 @@ function judgeLink(
     wholeLot,
   });
   const farthestUnitPpm = Math.max(Math.abs(sortedPpm[0]!), Math.abs(sortedPpm.at(-1)!));
-  const farthestHz = ((farthestUnitPpm + allowance.usedUpPpm) * receiver.carrierHz) / 1e6;
+  const farthestPpm =
+    farthestUnitPpm +
+    serviceDriftPpm +
+    halfWidthPpm +
+    farEndReachPpm(farEnd, receiver.farEndTolerancePpm);
+  const farthestHz = (farthestPpm * receiver.carrierHz) / 1e6;
   const inRegionHz = Math.min(farthestHz, Math.max(0, bounds.symbolRateRegionHz));
   const oversampledHz = Math.min(farthestHz, Math.max(0, bounds.frontEndWholeHz));
   return {

@@ -1,3 +1,5 @@
+import { countOf } from '@shared/format/counts';
+import { listLots, readLot } from '@/api/lots';
 import { listParts, readPart, type Part } from '@/api/parts';
 import { listReceivers, readReceiver, type Receiver } from '@/api/receivers';
 import { listSuppliers, readSupplier, type Supplier } from '@/api/suppliers';
@@ -55,4 +57,25 @@ export const receiverSource: PickSource = {
       .filter(({ active }) => active)
       .map(receiverOption),
   read: async (id, signal) => receiverOption(await readReceiver(id, signal)),
+};
+
+const lotOption = (lot: {
+  id: string;
+  lotNumber: string;
+  part: { partNumber: string };
+  unitsMeasured: number;
+}): PickOption => ({
+  id: lot.id,
+  label: lot.lotNumber,
+  detail: `${lot.part.partNumber} · ${countOf(lot.unitsMeasured, 'unit')}`,
+});
+
+/** Lots with measured units. */
+export const measuredLotSource: PickSource = {
+  key: 'measured-lots',
+  search: async (find, signal) =>
+    (await listLots({ find, limit }, signal)).items
+      .filter(({ unitsMeasured }) => unitsMeasured > 0)
+      .map(lotOption),
+  read: async (id, signal) => lotOption(await readLot(id, signal)),
 };

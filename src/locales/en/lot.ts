@@ -170,6 +170,12 @@ export default {
     choose: 'Receiver shown',
     otherRevision:
       'This analysis was made by another revision of the receiver; its curve is not drawn here.',
+    farEnd: 'With another measured lot at the far end',
+    farEndLot: 'Lot at the far end',
+    farEndHint:
+      'Every pair of a unit here and a unit there counts, in place of the far end’s tolerance. A trial saves nothing.',
+    farEndOutcome: 'With lot {lot} at the far end and {receiver}:',
+    farEndNone: 'That lot has no analysis yet.',
     budget: 'Budget of the data sheet against {receiver}',
     budgetHolds: 'Worst case {worst} (root sum of squares {rss}) of {allowance}: {margin} remain.',
     budgetLacks:
