@@ -258,19 +258,20 @@ describe('what a lot rests on', () => {
 
   it('tries other limits by typed numbers and saves nothing', async () => {
     const lot = await lots.measuredLot({ units: 20, strays: [6] });
-    const page = await open('quality', `/lots/${lot.id}`);
-    await page.getByRole('textbox', { name: /^Upper limit/ }).fill('5');
-    await page.getByText('Trial, not saved.').waitFor();
-    await page.getByText(/1 of 20 units would lie/).waitFor();
-    await page.getByRole('textbox', { name: /^Lower limit/ }).fill('7');
-    await page.getByText('The upper limit must lie above the lower one.').waitFor();
-    await page.getByRole('button', { name: 'Back to the lot’s own limits' }).click();
-    await page.getByText('Trial, not saved.').waitFor({ state: 'detached' });
     const auditor = await server.apiOf('auditor');
-    const now = await auditor<BrowserLot>('GET', `/api/lots/${lot.id}`);
+    const before = await auditor<BrowserLot>('GET', `/api/lots/${lot.id}`);
+    const page = await open('quality', `/lots/${lot.id}`);
+    const distribution = section(page, 'Distribution');
+    await page.getByRole('textbox', { name: /^Upper limit/ }).fill('5');
+    await distribution.getByText('Trial, not saved.').waitFor();
+    await distribution.getByText(/1 of 20 units would lie/).waitFor();
+    await page.getByRole('textbox', { name: /^Lower limit/ }).fill('7');
+    await distribution.getByText('The upper limit must lie above the lower one.').waitFor();
+    await page.getByRole('button', { name: 'Back to the lot’s own limits' }).click();
+    await distribution.getByText('Trial, not saved.').waitFor({ state: 'detached' });
     await page.reload();
     expect(await page.getByRole('textbox', { name: /^Upper limit/ }).inputValue()).toBe('10');
-    expect((await auditor<BrowserLot>('GET', `/api/lots/${lot.id}`)).version).toBe(now.version);
+    expect((await auditor<BrowserLot>('GET', `/api/lots/${lot.id}`)).version).toBe(before.version);
     await page.context().close();
   });
 
