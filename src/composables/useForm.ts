@@ -20,7 +20,8 @@ export function useForm<Values extends object>({
   validate = () => ({}),
   root,
 }: FormOptions<Values>) {
-  const values = reactive(structuredClone(initial)) as Values;
+  // What a query answered is reactive all through, and a proxy cannot be cloned.
+  const values = reactive(structuredClone(plain(initial))) as Values;
   const before = ref(JSON.stringify(initial));
   const left = reactive(new Set<string>());
   const wasTried = ref(false);

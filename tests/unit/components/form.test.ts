@@ -1,4 +1,5 @@
 // @vitest-environment jsdom
+import { reactive } from 'vue';
 import { expect, test, vi } from 'vitest';
 import { ApiError } from '@/api/api-error';
 import { useForm } from '@/composables/useForm';
@@ -78,4 +79,12 @@ test('rows sort by their value, what has none comes last in both directions', ()
     sortedRows(rows, columns, { key: 'n', direction }).map(({ n }) => n);
   expect(order('ascending')).toEqual([2, 10, null]);
   expect(order('descending')).toEqual([10, 2, null]);
+});
+
+test('a form starts from what a query answered, reactive all through', () => {
+  const answer = reactive({ name: 'B', temperatures: [-40, 85], rule: { level: 'II' } });
+  const form = useForm({ initial: { ...answer } });
+  form.values.temperatures.push(25);
+  expect(form.values).toEqual({ name: 'B', temperatures: [-40, 85, 25], rule: { level: 'II' } });
+  expect(answer.temperatures).toEqual([-40, 85]);
 });
