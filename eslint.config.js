@@ -49,6 +49,7 @@ export default tseslint.config(
     files: ['server/**/*.ts'],
     rules: forbid('@/*', '**/src/**', '**/tests/**', 'vue*'),
   },
+  { files: ['public/**/*.js'], languageOptions: { globals: globals.browser } },
   { files: ['**/*.mjs', '*.js'], languageOptions: { globals: globals.node } },
   prettier,
 );
