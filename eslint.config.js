@@ -39,7 +39,16 @@ export default tseslint.config(
   },
   {
     files: ['shared/**/*.ts'],
-    rules: forbid('node:*', 'vue*', '@/*', '**/server/**', '**/src/**', 'express*', 'pg*', 'sequelize*'),
+    rules: forbid(
+      'node:*',
+      'vue*',
+      '@/*',
+      '**/server/**',
+      '**/src/**',
+      'express*',
+      'pg*',
+      'sequelize*',
+    ),
   },
   {
     files: ['src/**/*.{ts,vue}'],
