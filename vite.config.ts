@@ -8,7 +8,13 @@ const path = (relative: string) => fileURLToPath(new URL(relative, import.meta.u
 const underTest = Boolean(process.env.VITEST);
 
 export default defineConfig(({ isSsrBuild }) => ({
-  resolve: { alias: { '@': path('./src'), '@shared': path('./shared') } },
+  resolve: {
+    alias: {
+      '@': path('./src'),
+      '@shared': path('./shared'),
+      '@stdlib/assert-has-generator-support': path('./src/compat/has-generators.cjs'),
+    },
+  },
   plugins: [
     vue(),
     Components({
