@@ -16,7 +16,7 @@ export function ensureChromium(): Promise<DebianProgram> {
 }
 
 /** A headless browser with an empty profile of its own; close it when done. */
-export async function launchBrowser(): Promise<Browser> {
+export async function launchBrowser(furtherArguments: readonly string[] = []): Promise<Browser> {
   const program = await ensureChromium();
   return chromium.launch({
     executablePath: program.path,
@@ -34,6 +34,7 @@ export async function launchBrowser(): Promise<Browser> {
       '--disable-component-update',
       '--disable-sync',
       '--font-render-hinting=none',
+      ...furtherArguments,
     ],
   });
 }
