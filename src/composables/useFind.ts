@@ -1,6 +1,6 @@
 import { computed, type Ref } from 'vue';
 import { refDebounced } from '@vueuse/core';
-import { keepPreviousData, useQuery } from '@tanstack/vue-query';
+import { useQuery } from '@tanstack/vue-query';
 import { type z } from 'zod';
 import { type FindHit } from '@shared/contract/work';
 import { api } from '@/api/client';
@@ -19,14 +19,12 @@ export function useFind(text: Readonly<Ref<string>>) {
     queryFn: ({ signal }) =>
       api.get<{ items: Hit[] }>('/api/find', { query: { find: settled.value }, signal }),
     enabled: isWorthAsking,
-    placeholderData: keepPreviousData,
     staleTime: 30_000,
   });
-  const hits = computed(() =>
-    text.value.trim().length >= 2 ? (query.data.value?.items ?? []) : [],
-  );
   const isAnswered = computed(
     () => isWorthAsking.value && query.isSuccess.value && text.value.trim() === settled.value,
   );
+  // Never hits of an earlier text: Enter would go where nobody wanted to.
+  const hits = computed(() => (isAnswered.value ? (query.data.value?.items ?? []) : []));
   return { hits, isAsking: query.isFetching, failed: query.isError, isAnswered };
 }
