@@ -95,9 +95,11 @@ async function register(
 type UploadFile = string | { name: string; mimeType: string; buffer: Buffer };
 
 async function choose(page: Page, file: UploadFile): Promise<Locator> {
-  const chooser = page.waitForEvent('filechooser');
-  await page.getByRole('button', { name: 'Choose files' }).click();
-  await (await chooser).setFiles(file);
+  const [chooser] = await Promise.all([
+    page.waitForEvent('filechooser'),
+    page.getByRole('button', { name: 'Choose files' }).first().click(),
+  ]);
+  await chooser.setFiles(file);
   const name = typeof file === 'string' ? file.split('/').at(-1)! : file.name;
   return page.getByRole('article', { name });
 }
