@@ -23,6 +23,8 @@ export default defineConfig((env) =>
           test: {
             name: 'browser',
             include: ['tests/browser/**/*.test.ts'],
+            // A page that a busy machine cut short is opened again; what fails twice more has failed.
+            retry: 2,
             globalSetup: ['tests/support/cluster.setup.ts', 'tests/support/browser.setup.ts'],
             testTimeout: 120_000,
             hookTimeout: 120_000,
