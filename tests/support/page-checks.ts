@@ -23,13 +23,18 @@ export async function settled(page: Page): Promise<void> {
   await page.waitForFunction(() => document.querySelector('[aria-busy="true"]') === null);
   await page.evaluate(async () => {
     await document.fonts.ready;
-    await new Promise((resolve) => requestAnimationFrame(() => requestAnimationFrame(resolve)));
+    // A page that is not in front draws no frames, and would be waited for without end.
+    await new Promise((resolve) => {
+      requestAnimationFrame(() => requestAnimationFrame(resolve));
+      setTimeout(resolve, 200);
+    });
   });
 }
 
 /** What axe finds, a line each; `rules` narrows it. */
 export async function axeFindings(page: Page, rules?: string[]): Promise<string[]> {
-  const builder = new AxeBuilder({ page });
+  // Otherwise it opens a page of its own for each look, which takes longer than the look; there are no frames to gather from.
+  const builder = new AxeBuilder({ page }).setLegacyMode();
   const { violations } = await (rules ? builder.withRules(rules) : builder).analyze();
   return violations.flatMap(({ id, nodes }) =>
     nodes.map(({ html, target }) => `${id}: ${target.join(' ')} ${html.slice(0, 160)}`),
